@@ -1,0 +1,4 @@
+import { answerAuthRequest } from '@/lib/server/auth-route'
+
+export const GET = answerAuthRequest
+export const POST = answerAuthRequest

@@ -1,0 +1,4 @@
+export const mailKeys = {
+  root: ['mail'] as const,
+  unit: (unitId: string) => [...mailKeys.root, unitId] as const,
+}

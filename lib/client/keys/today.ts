@@ -1,0 +1,4 @@
+export const todayKeys = {
+  root: ['today'] as const,
+  unit: (unitId: string) => [...todayKeys.root, unitId] as const,
+}

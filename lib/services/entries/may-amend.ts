@@ -1,0 +1,8 @@
+import type { Ctx } from '@/lib/server/ctx'
+
+/** Whether the actor may correct an entry: its author, or a physician of the unit that the patient is in. */
+export function mayAmend(ctx: Ctx, unitId: string, authorId: string | null): boolean {
+  if (ctx.actor.kind !== 'person') return false
+  if (ctx.actor.personId === authorId) return true
+  return ctx.actor.memberships.some((held) => held.unitId === unitId && held.role === 'physician')
+}
