@@ -28,6 +28,8 @@ const fixedHeaders = [
 
 /** @type {import('next').NextConfig} */
 const config = {
+  // Routes and pages that only the bench measures against end in .bench.ts(x) and are part of its own build alone.
+  pageExtensions: process.env.DAYBREATH_BENCH === '1' ? ['bench.tsx', 'bench.ts', 'tsx', 'ts'] : ['tsx', 'ts'],
   distDir,
   poweredByHeader: false,
   reactStrictMode: true,

@@ -1,18 +1,20 @@
-import { tmpdir } from 'node:os'
-import { join } from 'node:path'
 import { defineConfig } from '@playwright/test'
+import { DEMO_PASSWORD, PORTS, SMTP_URL, MAILBOX_URL, testFolder } from './tests/e2e/support/places'
 
 const chromium = process.env.DAYBREATH_CHROMIUM ?? '/usr/bin/chromium'
-const folder = (name: string) => join(tmpdir(), `daybreath-e2e-${name}`)
-const server = (port: number, name: string, flags: string) => ({
-  command: `node lib/start/serve-for-tests.mjs --port ${port} --folder ${folder(name)} ${flags}`,
-  url: `http://127.0.0.1:${port}/api/health`,
+const program = 'node --conditions=react-server --import tsx'
+
+const server = (name: 'empty' | 'demo' | 'ward', flags: string, before = '') => ({
+  command: `${before}exec node lib/start/serve-for-tests.mjs --port ${PORTS[name]} --folder ${testFolder(name)} ${flags}`,
+  url: `http://127.0.0.1:${PORTS[name]}/api/health`,
+  env: { DAYBREATH_TEST_SMTP_URL: SMTP_URL, DAYBREATH_DEMO_PASSWORD: DEMO_PASSWORD },
   timeout: 180_000,
   reuseExistingServer: false,
   gracefulShutdown: { signal: 'SIGTERM', timeout: 5_000 } as const,
 })
 
-// Two servers of the production build: one with an empty database, set up by the tests as a person would; one with the demo hospital.
+// Servers of the production build, each with its own port and database: one empty, set up by the tests as a person would; one with the demo
+// hospital; one with a ward in the morning. All of them send their mail to a real SMTP server on loopback.
 export default defineConfig({
   testDir: 'tests/e2e',
   outputDir: 'test-results',
@@ -22,11 +24,19 @@ export default defineConfig({
   timeout: 90_000,
   expect: { timeout: 10_000 },
   reporter: [['list']],
-  webServer: [server(3211, 'empty', ''), server(3212, 'demo', '--demo')],
+  webServer: [
+    {
+      command: `exec node tests/e2e/support/mailbox-server.mjs ${PORTS.smtp} ${PORTS.mailbox}`,
+      url: MAILBOX_URL,
+      reuseExistingServer: false,
+      gracefulShutdown: { signal: 'SIGTERM', timeout: 5_000 },
+    },
+    server('empty', ''),
+    server('ward', '--keep', `${program} tests/e2e/support/fill-ward.ts ward && `),
+    server('demo', '--demo'),
+  ],
   use: {
-    baseURL: 'http://localhost:3211',
     locale: 'en-GB',
-    timezoneId: 'Etc/UTC',
     trace: 'retain-on-failure',
     launchOptions: {
       executablePath: chromium,

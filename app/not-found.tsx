@@ -4,7 +4,9 @@ import { Brand } from '@/components/shell/brand'
 export default function NotFound() {
   return (
     <div className="mx-auto flex min-h-dvh max-w-page flex-col px-4 tablet:px-8">
-      <Brand />
+      <header>
+        <Brand />
+      </header>
       <main className="py-10">
         <h1 className="text-2xl font-bold">Not found</h1>
         <p className="mt-2 max-w-reading">

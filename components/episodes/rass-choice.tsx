@@ -14,7 +14,7 @@ export function rassText(level: number): string {
 
 /** The ten levels of the RASS side by side; the chosen one is put into words below. */
 export function RassChoice<Values extends FieldValues, Context, Output>(
-  props: Omit<FieldProps<Values, Context, Output>, 'label' | 'hint'>,
+  props: Omit<FieldProps<Values, Context, Output>, 'label' | 'hint'> & { onChosen?: () => void },
 ) {
   const value: unknown = useWatch({ control: props.control, name: props.name })
   const chosen = rassLevels.find(({ level }) => level === value)

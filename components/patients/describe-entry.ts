@@ -1,3 +1,4 @@
+import { bloodPressureText } from '@/components/episodes/observation-table'
 import { readingText, readingUnit } from '@/components/episodes/reading-label'
 import { rassText } from '@/components/episodes/rass-choice'
 import { rateNumber } from '@/components/holds/restart-list'
@@ -100,11 +101,12 @@ function holdWords(entry: Current<'hold'>): EntryWords {
 export function observationWords(readings: ObservedReadings, eyes: 'yes' | 'no' | null): string {
   const numbers = readingsWords([
     ['rate', 'breathsPerMin', readings.breathsPerMin], ['tidal volume', 'tidalVolumeMl', readings.tidalVolumeMl], ['SpO2', 'spo2Percent', readings.spo2Percent],
-    ['heart rate', 'heartRatePerMin', readings.heartRatePerMin], ['systolic', 'systolicMmHg', readings.systolicMmHg], ['diastolic', 'diastolicMmHg', readings.diastolicMmHg],
+    ['heart rate', 'heartRatePerMin', readings.heartRatePerMin],
     ['pH', 'ph', readings.ph], ['PaCO2', 'paCO2MmHg', readings.paCO2MmHg], ['PaO2', 'paO2MmHg', readings.paO2MmHg],
   ])
   const rass = readings.rass === null ? null : `RASS ${rassText(readings.rass)}`
   const voice = eyes === null ? null : eyes === 'yes' ? 'opens eyes to voice' : 'does not open eyes to voice'
   const signs = readings.signs.length > 0 ? `signs: ${readings.signs.map((sign) => SIGN_WORDS[sign]).join(', ')}` : 'no sign marked'
-  return [numbers, rass, voice, signs].filter(Boolean).join(', ')
+  const pressure = bloodPressureText(readings)
+  return [numbers, pressure === null ? null : `blood pressure ${pressure} mmHg`, rass, voice, signs].filter(Boolean).join(', ')
 }

@@ -15,7 +15,7 @@ const NARROWEST_LABELLED_PX = 17
 type Row = ChartPoint & Record<string, unknown>
 
 /** Months as bars or lines. Patterns and dashes tell series apart without colour; what is not final is hatched, or a hollow point. */
-export default function MeasureChart({ data }: { data: MeasureChartData }) {
+export function MeasureChart({ data }: { data: MeasureChartData }) {
   const id = useId().replace(/[^a-z0-9]/gi, '')
   const rows: Row[] = data.points.map((point) => ({ ...point, ...point.values }))
   const isLines = data.shape === 'lines'
@@ -25,7 +25,14 @@ export default function MeasureChart({ data }: { data: MeasureChartData }) {
       <ComposedChart data={rows} margin={{ top: 22, right: isLines ? 92 : 8, bottom: 4, left: 4 }} accessibilityLayer={false}>
         <defs>
           {FILLS.map((fill, index) => (
-            <pattern key={fill} id={`${id}-${index}`} width="6" height="6" patternUnits="userSpaceOnUse" patternTransform={`rotate(${index === 0 ? 45 : 135})`}>
+            <pattern
+              key={fill}
+              id={`${id}-${index}`}
+              width="6"
+              height="6"
+              patternUnits="userSpaceOnUse"
+              patternTransform={`rotate(${index === 0 ? 45 : 135})`}
+            >
               <rect width="6" height="6" fill="rgb(var(--paper))" />
               <rect width={index === 0 ? 2 : 3} height="6" fill={fill} />
             </pattern>
@@ -34,28 +41,66 @@ export default function MeasureChart({ data }: { data: MeasureChartData }) {
         <CartesianGrid vertical={false} stroke={LINE} />
         <XAxis dataKey="label" tick={{ fill: MUTED, fontSize: 12 }} stroke={LINE} interval="preserveEnd" minTickGap={14} />
         <YAxis
-          width={48} domain={[0, ticks.at(-1) ?? 1]} ticks={ticks} interval={0} tick={{ fill: MUTED, fontSize: 12 }} stroke={LINE}
+          width={48}
+          domain={[0, ticks.at(-1) ?? 1]}
+          ticks={ticks}
+          interval={0}
+          tick={{ fill: MUTED, fontSize: 12 }}
+          stroke={LINE}
           label={{ value: data.axis, position: 'top', offset: 10, dx: data.axis.length > 5 ? 12 : 0, fill: MUTED, fontSize: 12 }}
         />
-        <Tooltip isAnimationActive={false} cursor={{ fill: 'rgb(var(--ink) / 0.06)' }} content={({ active, payload }) => (active ? <Reading data={data} row={payload[0]?.payload as Row | undefined} /> : null)} />
+        <Tooltip
+          isAnimationActive={false}
+          cursor={{ fill: 'rgb(var(--ink) / 0.06)' }}
+          content={({ active, payload }) =>
+            active ? <Reading data={data} row={payload[0]?.payload as Row | undefined} /> : null
+          }
+        />
         {data.series.map((series, index) =>
           isLines ? (
             <Line
-              key={series.key} dataKey={series.key} name={series.heading} stroke={INK} strokeWidth={2} strokeDasharray={DASHES[index]} type="linear"
-              isAnimationActive={false} connectNulls={false}
+              key={series.key}
+              dataKey={series.key}
+              name={series.heading}
+              stroke={INK}
+              strokeWidth={2}
+              strokeDasharray={DASHES[index]}
+              type="linear"
+              isAnimationActive={false}
+              connectNulls={false}
               dot={(dot: DotProps) => <Point key={dot.payload.month} {...dot} isSquare={index > 0} />}
             >
-              <LabelList dataKey={series.key} content={(label) => <EndLabel {...(label as LabelProps)} isLast={label.index === lastKnown(rows, series.key)} text={series.heading} />} />
+              <LabelList
+                dataKey={series.key}
+                content={(label) => (
+                  <EndLabel
+                    {...(label as LabelProps)}
+                    isLast={label.index === lastKnown(rows, series.key)}
+                    text={series.heading}
+                  />
+                )}
+              />
             </Line>
           ) : (
             <Bar
-              key={series.key} dataKey={series.key} name={series.heading} stackId={data.shape === 'stacked' ? 'all' : undefined} isAnimationActive={false}
-              stroke={FILLS[index] ?? INK} maxBarSize={34}
+              key={series.key}
+              dataKey={series.key}
+              name={series.heading}
+              stackId={data.shape === 'stacked' ? 'all' : undefined}
+              isAnimationActive={false}
+              stroke={FILLS[index] ?? INK}
+              maxBarSize={34}
             >
               {rows.map((row) => (
-                <Cell key={row.month} fill={row.status === '' && index === 0 ? FILLS[0] : `url(#${id}-${index})`} strokeDasharray={row.status === '' ? undefined : '3 2'} />
+                <Cell
+                  key={row.month}
+                  fill={row.status === '' && index === 0 ? FILLS[0] : `url(#${id}-${index})`}
+                  strokeDasharray={row.status === '' ? undefined : '3 2'}
+                />
               ))}
-              {data.shape === 'bars' ? <LabelList dataKey={series.key} content={(label) => <BarLabel {...(label as LabelProps)} />} /> : null}
+              {data.shape === 'bars' ? (
+                <LabelList dataKey={series.key} content={(label) => <BarLabel {...(label as LabelProps)} />} />
+              ) : null}
             </Bar>
           ),
         )}
@@ -126,7 +171,14 @@ function Reading({ data, row }: { data: MeasureChartData; row: Row | undefined }
         const value = row.values[key] ?? null
         return (
           <p key={key}>
-            {heading}: {value === null ? 'not computable' : kind === 'percent' ? `${value.toFixed(1)} %` : kind === 'ratio' ? value.toFixed(2) : value}
+            {heading}:{' '}
+            {value === null
+              ? 'not computable'
+              : kind === 'percent'
+                ? `${value.toFixed(1)} %`
+                : kind === 'ratio'
+                  ? value.toFixed(2)
+                  : value}
           </p>
         )
       })}

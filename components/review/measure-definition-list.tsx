@@ -16,11 +16,15 @@ export function MeasureDefinitionList({ measure }: { measure: ReviewMeasure }) {
       {exclusions.length > 0 ? (
         <>
           <dt>Not counted</dt>
-          {exclusions.map((text) => <dd key={text}>{text}</dd>)}
+          {exclusions.map((text) => (
+            <dd key={text}>{text}</dd>
+          ))}
         </>
       ) : null}
       <dt>To bear in mind</dt>
-      {notes.map((text) => <dd key={text}>{text}</dd>)}
+      {notes.map((text) => (
+        <dd key={text}>{text}</dd>
+      ))}
     </dl>
   )
 }

@@ -10,7 +10,13 @@ export type ChartSeries = { key: string; heading: string; kind: MeasureColumn['k
 export type MeasureChartData = { shape: 'bars' | 'stacked' | 'lines'; axis: string; series: ChartSeries[]; points: ChartPoint[] }
 
 const AXIS: Record<ReviewMeasure, string> = {
-  ventilator_days: 'days', patient_days: 'days', utilisation: 'ratio', screens: '%', trials: '%', extubations: 'extubations', reintubations: '%',
+  ventilator_days: 'days',
+  patient_days: 'days',
+  utilisation: 'ratio',
+  screens: '%',
+  trials: '%',
+  extubations: 'extubations',
+  reintubations: '%',
 }
 
 function drawnColumns(measure: ReviewMeasure): MeasureColumn[] {
@@ -50,7 +56,9 @@ export function latestFinal(measure: ReviewMeasure, months: readonly MonthMeasur
 /** The chart in sentences: for each series where it begins, where it ends, its lowest and highest month. */
 export function describeChart(measure: ReviewMeasure, months: readonly MonthMeasures[]): string {
   const finals = months.filter((month) => monthStatus(measure, month) === '')
-  return drawnColumns(measure).map((column) => describeSeries(column, finals)).join(' ')
+  return drawnColumns(measure)
+    .map((column) => describeSeries(column, finals))
+    .join(' ')
 }
 
 function describeSeries({ heading, kind, value }: MeasureColumn, months: readonly MonthMeasures[]): string {

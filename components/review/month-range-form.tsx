@@ -13,7 +13,9 @@ export function MonthRangeForm({ from, to, errors }: MonthRangeFormProps) {
     <form method="get" className="no-print flex flex-wrap items-start gap-4" aria-label="Months shown" noValidate>
       <MonthField name="from" label="First month" value={from} error={errors.from} />
       <MonthField name="to" label="Last month" value={to} error={errors.to} />
-      <Button type="submit" className="mt-6">Show</Button>
+      <Button type="submit" className="mt-6">
+        Show
+      </Button>
     </form>
   )
 }
@@ -21,13 +23,23 @@ export function MonthRangeForm({ from, to, errors }: MonthRangeFormProps) {
 function MonthField({ name, label, value, error }: { name: string; label: string; value: string; error: string | undefined }) {
   return (
     <div className="w-44">
-      <label htmlFor={`review-${name}`} className="block text-sm text-muted">{label}</label>
+      <label htmlFor={`review-${name}`} className="block text-sm text-muted">
+        {label}
+      </label>
       <input
-        id={`review-${name}`} name={name} type="month" defaultValue={value} aria-invalid={error !== undefined}
+        id={`review-${name}`}
+        name={name}
+        type="month"
+        defaultValue={value}
+        aria-invalid={error !== undefined}
         aria-describedby={error === undefined ? undefined : `review-${name}-error`}
         className="min-h-[44px] w-full rounded-control border border-muted bg-field px-3 text-ink aria-invalid:border-2 aria-invalid:border-stop"
       />
-      {error === undefined ? null : <p id={`review-${name}-error`} className="mt-1 text-sm font-semibold text-stop">{error}</p>}
+      {error === undefined ? null : (
+        <p id={`review-${name}-error`} className="mt-1 text-sm font-semibold text-stop">
+          {error}
+        </p>
+      )}
     </div>
   )
 }

@@ -34,10 +34,14 @@ export function ReviewPage(props: ReviewPageProps) {
         aside={<MonthRangeForm from={from} to={to} errors={{}} />}
       />
       {isEmpty ? (
-        <Notice tone="info" className="mb-8">No patient was in the unit in these months. The counts begin with the first patient admitted.</Notice>
+        <Notice tone="info" className="mb-8">
+          No patient was in the unit in these months. The counts begin with the first patient admitted.
+        </Notice>
       ) : null}
       <div className="grid grid-cols-[minmax(0,1fr)] gap-x-12 gap-y-10 desk:grid-cols-[repeat(2,minmax(0,1fr))]">
-        {REVIEW_MEASURES.map((measure) => <MeasureSection key={measure} measure={measure} review={review} />)}
+        {REVIEW_MEASURES.map((measure) => (
+          <MeasureSection key={measure} measure={measure} review={review} />
+        ))}
       </div>
     </>
   )

@@ -15,7 +15,7 @@ import { CRITERION_UNITS, CRITERION_WORDS, RSBI_CONDITION_WORDS, UNKNOWN_WORDS }
 import { Value } from '@/components/ui/value'
 import { CarriedValues } from '@/components/episodes/carried-values'
 import { CriterionField } from './criterion-field'
-import { readingsOf } from './criterion-inputs'
+import { readingsOf, RSBI_READINGS } from './criterion-inputs'
 import { CriterionLine } from './criterion-line'
 import type { Carried } from './screen-values'
 import type { ScreenFormInput } from './use-screen-form'
@@ -62,26 +62,27 @@ export function CriteriaList(props: CriteriaListProps) {
           </CriterionLine>
         )
       })}
-      <RsbiLine form={form} rule={rsbiRule} verdict={verdict} counted={counted} isAdult={props.isAdult} />
+      <RsbiLine {...props} rule={rsbiRule} />
     </div>
   )
 }
 
 function LimitWords({ rule, counted }: { rule: ScreenRule; counted: number | string | boolean | null }) {
-  const unit = CRITERION_UNITS[rule.criterion]
   const isComputed = rule.criterion === 'pfRatio' && rule.kind === 'number' && typeof counted === 'number'
   return (
     <>
-      {isComputed ? <Value value={valueBesideLimit(counted, CRITERION_DECIMALS.pfRatio, rule.limits)} unit={unit} className="block" /> : null}
-      {describeLimit(rule)}{unit !== '' ? ` ${unit}` : ''}
+      {isComputed ? <Value value={valueBesideLimit(counted, CRITERION_DECIMALS.pfRatio, rule.limits)} unit={CRITERION_UNITS.pfRatio} className="block" /> : null}
+      {describeLimit(rule)}
     </>
   )
 }
 
-type RsbiLineProps = Pick<CriteriaListProps, 'form' | 'verdict' | 'counted' | 'isAdult'> & { rule: ScreenRule | undefined }
+type RsbiLineProps = Omit<CriteriaListProps, 'rules'> & { rule: ScreenRule | undefined }
 
 /** Rate and volume as typed, the index computed from them, and the condition under which they were measured. */
-function RsbiLine({ form, rule, verdict, counted, isAdult }: RsbiLineProps) {
+function RsbiLine({ form, rule, verdict, counted, isAdult, carried, confirm, timeZone, nowMs }: RsbiLineProps) {
+  const open = RSBI_READINGS.filter((name) => name in carried)
+  const onTyped = () => confirm(open)
   const index = breathingIndex({ breathsPerMin: counted.breathsPerMin, tidalVolumeMl: counted.tidalVolumeMl, isAdult })
   const judged = verdict.criteria.find((each) => each.criterion === 'rsbi')
   const condition: unknown = useWatch({ control: form.control, name: 'readings.rsbiCondition' })
@@ -99,17 +100,22 @@ function RsbiLine({ form, rule, verdict, counted, isAdult }: RsbiLineProps) {
       }
       source={rule?.source ?? 'Published for one minute without support, on room air: Yang & Tobin 1991, doi:10.1056/NEJM199105233242101'}
       mark={judged?.mark ?? null}
+      onKeyDown={(event) => {
+        if (event.key === 'Enter' && event.target instanceof HTMLInputElement) onTyped()
+      }}
     >
       <div className="flex flex-col gap-2">
         <div className="flex flex-wrap gap-x-3 gap-y-2">
-          <ReadingField form={form} name="readings.breathsPerMin" reading="breathsPerMin" label="Respiratory rate, spontaneous" />
-          <ReadingField form={form} name="readings.tidalVolumeMl" reading="tidalVolumeMl" label="Tidal volume, spontaneous" />
+          <ReadingField form={form} name="readings.breathsPerMin" reading="breathsPerMin" label="Respiratory rate, spontaneous" onTyped={onTyped} />
+          <ReadingField form={form} name="readings.tidalVolumeMl" reading="tidalVolumeMl" label="Tidal volume, spontaneous" onTyped={onTyped} />
         </div>
+        <CarriedValues observedAt={open.map((name) => carried[name])} onConfirm={onTyped} label="rate and volume" timeZone={timeZone} nowMs={nowMs} />
         <ChoiceField
           control={form.control}
           name="readings.rsbiCondition"
           label="Measured"
           clearLabel="not assessed"
+          onChosen={onTyped}
           options={RSBI_CONDITIONS.map((value) => ({ value, label: RSBI_CONDITION_WORDS[value] }))}
         />
       </div>

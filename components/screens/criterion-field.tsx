@@ -39,7 +39,7 @@ export function CriterionField({ form, criterion, onTyped }: CriterionFieldProps
         </div>
       )
     case 'yesNo':
-      return <YesNoField control={form.control} name={`readings.${input.name}`} label={label} isLabelHidden clearLabel="not assessed" />
+      return <YesNoField control={form.control} name={`readings.${input.name}`} label={label} isLabelHidden clearLabel="not assessed" onChosen={onTyped} />
     case 'word':
       return (
         <ChoiceField
@@ -48,12 +48,13 @@ export function CriterionField({ form, criterion, onTyped }: CriterionFieldProps
           label={label}
           isLabelHidden
           clearLabel="not assessed"
+          onChosen={onTyped}
           options={input.name === 'cough'
             ? COUGHS.map((value) => ({ value, label: COUGH_WORDS[value] }))
             : SECRETIONS.map((value) => ({ value, label: SECRETIONS_WORDS[value] }))}
         />
       )
     case 'rass':
-      return <RassChoice control={form.control} name="readings.rass" isLabelHidden />
+      return <RassChoice control={form.control} name="readings.rass" isLabelHidden onChosen={onTyped} />
   }
 }

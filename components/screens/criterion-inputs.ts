@@ -33,6 +33,9 @@ export const CRITERION_INPUTS: Record<ScreenCriterion, CriterionInput> = {
   rsbi: { kind: 'numbers', readings: [{ name: 'breathsPerMin', label: 'Respiratory rate' }, { name: 'tidalVolumeMl', label: 'Tidal volume' }] },
 }
 
+/** What the RSBI is computed from; asked for whether or not it is a criterion of the unit. */
+export const RSBI_READINGS = ['breathsPerMin', 'tidalVolumeMl', 'rsbiCondition'] as const satisfies readonly (keyof ScreenReadings)[]
+
 /** The readings that a criterion needs. */
 export function readingsOf(criterion: ScreenCriterion): (keyof ScreenReadings)[] {
   const input = CRITERION_INPUTS[criterion]

@@ -15,22 +15,29 @@ export type Carried = Partial<Record<keyof ScreenReadings, number>>
 /** Older values are not offered: they are looked at again rather than tapped through. Common practice, no source. */
 export const CARRIED_FOR_MS = 12 * HOUR_MS
 
+/** A screen of today that was left incomplete: completing it takes its readings over, so that nothing is typed twice. */
+export type LeftIncomplete = { observedAt: number; readings: ScreenReadings }
+
 /**
- * Values of the last settings and gas that a screen can start from, each with its age. Rate and volume are not carried over: measured on
- * full support they say nothing about the RSBI. Nothing carried over counts until it is confirmed.
+ * Values that a screen can start from, each with its age: of the last settings and gas, and of today's screen if it was left incomplete; the
+ * later one wins. Rate and volume come from an earlier screen only: measured on full support they say nothing about the RSBI. Nothing carried
+ * over counts until it is confirmed.
  */
-export function carryOver(prefill: PrefillDto, nowMs: number): { readings: ScreenReadings; carried: Carried } {
+export function carryOver(prefill: PrefillDto, left: LeftIncomplete | null, nowMs: number): { readings: ScreenReadings; carried: Carried } {
   const readings = { ...NO_READINGS }
   const carried: Carried = {}
+  const offer = (values: Partial<ScreenReadings>, observedAt: number) => {
+    if (nowMs - observedAt > CARRIED_FOR_MS) return
+    for (const [name, value] of Object.entries(values) as [keyof ScreenReadings, unknown][]) {
+      if (value === null || (carried[name] ?? 0) > observedAt) continue
+      Object.assign(readings, { [name]: value })
+      carried[name] = observedAt
+    }
+  }
   const { settings, gas } = prefill
-  if (settings && nowMs - settings.observedAt <= CARRIED_FOR_MS) {
-    Object.assign(readings, { fio2Fraction: settings.fio2Fraction, peepCmH2O: settings.peepCmH2O, spo2Percent: settings.spo2Percent })
-    for (const name of ['fio2Fraction', 'peepCmH2O', 'spo2Percent'] as const) if (readings[name] !== null) carried[name] = settings.observedAt
-  }
-  if (gas && nowMs - gas.observedAt <= CARRIED_FOR_MS) {
-    Object.assign(readings, { paO2MmHg: gas.paO2MmHg, paO2FiO2Fraction: gas.fio2Fraction, ph: gas.ph, haemoglobinGPerDl: gas.haemoglobinGPerDl })
-    for (const name of ['paO2MmHg', 'paO2FiO2Fraction', 'ph', 'haemoglobinGPerDl'] as const) if (readings[name] !== null) carried[name] = gas.observedAt
-  }
+  if (settings) offer({ fio2Fraction: settings.fio2Fraction, peepCmH2O: settings.peepCmH2O, spo2Percent: settings.spo2Percent }, settings.observedAt)
+  if (gas) offer({ paO2MmHg: gas.paO2MmHg, paO2FiO2Fraction: gas.fio2Fraction, ph: gas.ph, haemoglobinGPerDl: gas.haemoglobinGPerDl }, gas.observedAt)
+  if (left) offer(left.readings, left.observedAt)
   return { readings, carried }
 }
 

@@ -8,7 +8,7 @@ import { recordScreenSchema, type ScreenFormDto } from '@/lib/schemas/screens'
 import { wallClock } from '@/lib/client/wall-clock'
 import type { ScreenReadings } from '@/lib/weaning/readings'
 import { judgeScreen } from '@/lib/weaning/screen/judge-screen'
-import { readingsOf } from './criterion-inputs'
+import { readingsOf, RSBI_READINGS } from './criterion-inputs'
 import { carryOver, confirmedReadings, NO_READINGS, type Carried } from './screen-values'
 
 export type ScreenFormInput = z.input<typeof recordScreenSchema>
@@ -33,7 +33,7 @@ export function useScreenForm(dto: ScreenFormDto) {
   const counted = useMemo(() => confirmedReadings(typed ?? NO_READINGS, carried), [typed, carried])
   const verdict = judgeScreen(dto.protocol.content.screen, counted, dto.patient.isAdult)
 
-  const shown = new Set<keyof ScreenReadings>(dto.protocol.content.screen.flatMap(({ criterion }) => readingsOf(criterion)))
+  const shown = new Set<keyof ScreenReadings>([...RSBI_READINGS, ...dto.protocol.content.screen.flatMap(({ criterion }) => readingsOf(criterion))])
   const unconfirmed = Object.keys(carried).filter((name): name is keyof Carried => shown.has(name as keyof ScreenReadings))
   const confirm = (names: readonly string[]) =>
     setCarried((now) => Object.fromEntries(Object.entries(now).filter(([name]) => !names.includes(name))) as Carried)
@@ -52,6 +52,8 @@ function startFrom(dto: ScreenFormDto): { values: ScreenFormInput; carried: Carr
     }
     return { values, carried: {} }
   }
-  const { readings, carried } = carryOver(dto.prefill, dto.nowMs)
+  const [latest] = dto.screens
+  const left = latest?.result === 'incomplete' && latest.readings ? { observedAt: latest.observedAt, readings: latest.readings } : null
+  const { readings, carried } = carryOver(dto.prefill, left, dto.nowMs)
   return { values: { ...shared, observed: dto.wallClock, amends: null, excuse: null, note: null, readings }, carried }
 }

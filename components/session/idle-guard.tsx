@@ -70,7 +70,11 @@ function hideAllBut(shown: HTMLElement): () => void {
   const title = document.title
   const hidden = Array.from(document.body.children)
     .filter((child): child is HTMLElement => child instanceof HTMLElement && child !== shown)
-    .map((child) => ({ child, display: child.style.getPropertyValue('display'), priority: child.style.getPropertyPriority('display') }))
+    .map((child) => ({
+      child,
+      display: child.style.getPropertyValue('display'),
+      priority: child.style.getPropertyPriority('display'),
+    }))
   for (const { child } of hidden) child.style.setProperty('display', 'none', 'important')
   document.title = 'Locked'
   return () => {

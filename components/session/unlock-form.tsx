@@ -79,7 +79,7 @@ export function UnlockForm({ name, takesFocus = false, onUnlocked }: UnlockFormP
           ) : null}
         </div>
         {error?.isEnded ? (
-          <a href="/sign-in" target="_blank" rel="noreferrer" className="inline-block min-h-[44px] py-2.5">
+          <a href="/sign-in" target="_blank" rel="noreferrer" className="inline-block min-h-[44px] py-2.5 underline">
             Sign in in a new tab, then come back to this one
           </a>
         ) : null}

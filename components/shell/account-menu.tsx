@@ -2,13 +2,13 @@
 
 import Link from 'next/link'
 import { useEffect, useRef, useState, type RefObject } from 'react'
-import { Button } from '@/components/ui/button'
 import { failureMessage } from '@/lib/client/api'
 import { lockScreen, signOut } from '@/lib/client/auth-client'
 import { KeySwitch } from './key-switch'
 import { ThemeSwitch, type Theme } from './theme-switch'
 
-const ITEM = 'flex min-h-[44px] w-full items-center justify-start px-0 text-left font-normal'
+const ITEM =
+  'flex min-h-[44px] w-full cursor-pointer items-center text-left font-semibold underline decoration-line decoration-2 underline-offset-4 hover:decoration-ink'
 
 /** The person's own corner: who is signed in, lock, account, day or night, sign out. */
 export function AccountMenu({ name, roles, theme }: { name: string; roles: readonly string[]; theme: Theme }) {
@@ -67,21 +67,17 @@ export function AccountMenu({ name, roles, theme }: { name: string; roles: reado
             {role}
           </p>
         ))}
-        <Button variant="quiet" className={ITEM} onClick={lockAndClose}>
+        <button type="button" className={ITEM} onClick={lockAndClose}>
           Lock this screen now
-        </Button>
-        <Link
-          href="/account"
-          onClick={() => setOpen(false)}
-          className={`${ITEM} text-ink underline decoration-line decoration-2 underline-offset-4`}
-        >
+        </button>
+        <Link href="/account" onClick={() => setOpen(false)} className={ITEM}>
           Account
         </Link>
         <ThemeSwitch theme={theme} />
         <KeySwitch />
-        <Button variant="quiet" className={ITEM} onClick={() => void act(signOut)}>
+        <button type="button" className={ITEM} onClick={() => void act(signOut)}>
           Sign out
-        </Button>
+        </button>
         <p role="alert" className="font-semibold text-stop">
           {problem}
         </p>

@@ -2,7 +2,7 @@
 
 import { useEffect, useState } from 'react'
 import { Mark } from '@/components/ui/mark'
-import { SILENT_AFTER_MS, useHeardAt } from '@/lib/client/live'
+import { useLive } from '@/lib/client/live'
 import { shortDay, wallClock } from '@/lib/client/wall-clock'
 import { cn } from '@/lib/shared/cn'
 import { useShellUnit, type ShellUnit } from './shell-unit'
@@ -30,12 +30,12 @@ export function PlaceAndTime({ units, fallbackUnitId, hospitalName, serverNowMs 
 type Clock = { serverMs: number; deviceMs: number }
 
 function LiveState({ timeZone, clock }: { timeZone: string; clock: Clock }) {
-  const heardAt = useHeardAt()
-  if (heardAt === null) return null
-  const isSilent = clock.deviceMs - heardAt > SILENT_AFTER_MS
-  const heard = wallClock(heardAt + clock.serverMs - clock.deviceMs, timeZone).time
+  const live = useLive()
+  if (live === null) return null
+  const { isSilent } = live
+  const heard = wallClock(live.heardAtMs + clock.serverMs - clock.deviceMs, timeZone).time
   return (
-    <span className={cn('ml-1', isSilent && 'font-semibold text-stop')}>
+    <span className={cn(isSilent && 'font-semibold text-stop')}>
       {' · '}
       {isSilent ? (
         <>

@@ -3,10 +3,11 @@ import { EXCUSE_WORDS } from '@/lib/weaning/words'
 
 /** Ventilator day and current settings in one line, values in the tabular face. */
 export function SettingsLine({ row }: { row: TodayRowDto }) {
-  const { settings } = row
+  // Settings are current only while the patient is ventilated.
+  const settings = row.endedAtMs === null ? row.settings : null
   return (
     <p className="text-sm text-muted">
-      <Measured label="day">{row.ventilatorDayNumber}</Measured>
+      <Measured label={row.endedAtMs === null ? 'day' : 'last ventilator day'}>{row.ventilatorDayNumber}</Measured>
       {row.airway === 'tracheostomy' ? ' · tracheostomy' : null}
       {row.excuse ? ` · ${EXCUSE_WORDS[row.excuse]}` : null}
       {settings ? (

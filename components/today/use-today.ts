@@ -4,7 +4,7 @@ import { useQuery } from '@tanstack/react-query'
 import { useEffect, useState } from 'react'
 import { apiGet } from '@/lib/client/api'
 import { todayKeys } from '@/lib/client/keys/today'
-import { SILENT_AFTER_MS, startWatching, useHeardAt } from '@/lib/client/live'
+import { startWatching, useLive } from '@/lib/client/live'
 import type { TodayDto } from '@/lib/schemas/today'
 
 /** A colleague's entry is to be seen within 5 s; the rest of the time is for the answer and the drawing. */
@@ -22,16 +22,5 @@ export function useToday(first: TodayDto): { today: TodayDto; isSilent: boolean 
     refetchInterval: POLL_MS,
   })
   useEffect(() => startWatching(Date.now()), [])
-  return { today: data.nowMs >= first.nowMs ? data : first, isSilent: useSilence() }
-}
-
-/** Whether the server has not been heard for longer than a reader may take for granted. */
-function useSilence(): boolean {
-  const heardAt = useHeardAt()
-  const [nowMs, setNow] = useState<number | null>(null)
-  useEffect(() => {
-    const timer = setInterval(() => setNow(Date.now()), 2_500)
-    return () => clearInterval(timer)
-  }, [])
-  return heardAt !== null && nowMs !== null && nowMs - heardAt > SILENT_AFTER_MS
+  return { today: data.nowMs >= first.nowMs ? data : first, isSilent: useLive()?.isSilent ?? false }
 }

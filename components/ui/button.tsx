@@ -5,12 +5,12 @@ import { cn } from '@/lib/shared/cn'
 export type ButtonVariant = 'primary' | 'secondary' | 'danger' | 'quiet'
 
 const BASE =
-  'inline-flex min-h-[44px] min-w-[44px] cursor-pointer items-center justify-center gap-2 rounded-control px-5 py-2 text-center font-semibold no-underline'
+  'inline-flex min-h-[44px] min-w-[44px] cursor-pointer items-center justify-center gap-2 rounded-control py-2 text-center font-semibold no-underline'
 
 const VARIANTS: Record<ButtonVariant, string> = {
-  primary: 'bg-dawn text-paper hover:bg-dawn/90',
-  secondary: 'border border-ink bg-transparent text-ink hover:bg-ink/5',
-  danger: 'border-2 border-stop bg-transparent text-stop hover:bg-stop/10',
+  primary: 'px-5 bg-dawn text-paper hover:bg-dawn/90',
+  secondary: 'px-5 border border-ink bg-transparent text-ink hover:bg-ink/5',
+  danger: 'px-5 border-2 border-stop bg-transparent text-stop hover:bg-stop/10',
   quiet: 'px-3 text-ink underline decoration-line decoration-2 underline-offset-4 hover:decoration-ink',
 }
 

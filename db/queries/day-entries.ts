@@ -9,24 +9,32 @@ import { preparedOnce } from './prepared'
 const ids = sql`${sql.placeholder('ids')}`
 const fromDay = sql.placeholder('fromDay')
 
-/** A JSON column as its text. Most of these are never looked into: only what is running is judged, so only that is parsed. */
+/** A JSON column as its text, parsed only where it is looked into. */
 const asText = (column: SQLiteColumn) => sql<string>`${column}`
 
-/** No end stands for it: none was recorded, or the one that was has been withdrawn. */
-function hasNoEnd(ends: typeof holdEnds | typeof trialEnds, ofColumn: 'hold_id' | 'trial_id', entryId: SQLiteColumn): SQL {
-  return sql`not exists (select 1 from ${ends} done where done.${sql.identifier(ofColumn)} = ${entryId} and done.is_withdrawn = 0
-    and not exists (select 1 from ${ends} newer where newer.supersedes_id = done.id))`
+/** The readings of what still runs: only that is judged. Null for the rest. */
+const textIfRunning = (readings: SQLiteColumn, parentId: SQLiteColumn) =>
+  sql<string | null>`case when ${parentId} in (select value from json_each(${sql.placeholder('runningIds')})) then ${readings} end`
+
+/**
+ * The hold or trial that started last in each given episode. Only it can still be running, from whatever day, because none starts while
+ * another one runs. One step down the index for each episode.
+ */
+function isLastStarted(table: typeof holds | typeof trials, only: SQL = sql``): SQL {
+  return sql`${table.id} in (
+    select (select one.id from ${table} one where one.episode_id = given.value ${only} and one.is_withdrawn = 0
+      and not exists (select 1 from ${table} newer where newer.supersedes_id = one.id)
+      order by one.ventilator_day desc, one.observed_at desc limit 1)
+    from json_each(${ids}) given)`
 }
 
 function prepareStatements(tx: Tx) {
-  const isOpenHold = sql`(${holds.start} = 'started' and ${hasNoEnd(holdEnds, 'hold_id', holds.entryId)})`
   // An earlier decision whose time to look again is still to come or of today, unless something was decided or tried since.
   const isPromise = sql`(${decisions.lookAgainAt} >= ${sql.placeholder('lookFrom')}
     and not exists (select 1 from ${decisions} later where later.episode_id = ${decisions.episodeId} and later.is_withdrawn = 0
       and later.observed_at > ${decisions.observedAt} and not exists (select 1 from ${decisions} newer where newer.supersedes_id = later.id))
     and not exists (select 1 from ${trials} since where since.episode_id = ${decisions.episodeId} and since.is_withdrawn = 0
       and since.observed_at > ${decisions.observedAt} and not exists (select 1 from ${trials} newer where newer.supersedes_id = since.id)))`
-  const isOpenTrial = hasNoEnd(trialEnds, 'trial_id', trials.entryId)
   return {
     screens: tx.select({
       episodeId: screens.episodeId, ventilatorDay: screens.ventilatorDay, observedAt: screens.observedAt, recordedAt: screens.recordedAt,
@@ -36,9 +44,10 @@ function prepareStatements(tx: Tx) {
       episodeId: holds.episodeId, entryId: holds.entryId, ventilatorDay: holds.ventilatorDay, observedAt: holds.observedAt, recordedAt: holds.recordedAt,
       start: holds.start, safety: holds.safety, protocolVersionId: holds.protocolVersionId,
     }).from(holds)
-      .where(and(isOneOf(holds.episodeId, ids), or(gte(holds.ventilatorDay, fromDay), isOpenHold), isCurrent(holds))).prepare(),
+      .where(and(or(and(isOneOf(holds.episodeId, ids), gte(holds.ventilatorDay, fromDay)), isLastStarted(holds, sql`and one.start = 'started'`)), isCurrent(holds)))
+      .prepare(),
     holdObservations: tx.select({
-      holdId: holdObservations.holdId, observedAt: holdObservations.observedAt, readingsJson: asText(holdObservations.readings),
+      holdId: holdObservations.holdId, observedAt: holdObservations.observedAt, readingsJson: textIfRunning(holdObservations.readings, holdObservations.holdId),
       opensEyesToVoice: holdObservations.opensEyesToVoice,
     }).from(holdObservations).where(and(isOneOf(holdObservations.holdId, ids), isCurrent(holdObservations)))
       .orderBy(holdObservations.observedAt).prepare(),
@@ -48,9 +57,9 @@ function prepareStatements(tx: Tx) {
       episodeId: trials.episodeId, entryId: trials.entryId, ventilatorDay: trials.ventilatorDay, observedAt: trials.observedAt,
       recordedAt: trials.recordedAt, plannedDurationMin: trials.plannedDurationMin, baselineJson: asText(trials.baseline), protocolVersionId: trials.protocolVersionId,
     }).from(trials)
-      .where(and(isOneOf(trials.episodeId, ids), or(gte(trials.ventilatorDay, fromDay), isOpenTrial), isCurrent(trials))).prepare(),
+      .where(and(or(and(isOneOf(trials.episodeId, ids), gte(trials.ventilatorDay, fromDay)), isLastStarted(trials)), isCurrent(trials))).prepare(),
     trialObservations: tx.select({
-      trialId: trialObservations.trialId, observedAt: trialObservations.observedAt, readingsJson: asText(trialObservations.readings),
+      trialId: trialObservations.trialId, observedAt: trialObservations.observedAt, readingsJson: textIfRunning(trialObservations.readings, trialObservations.trialId),
     }).from(trialObservations).where(and(isOneOf(trialObservations.trialId, ids), isCurrent(trialObservations)))
       .orderBy(trialObservations.observedAt).prepare(),
     trialEnds: tx.select({ trialId: trialEnds.trialId, observedAt: trialEnds.observedAt, outcome: trialEnds.outcome, rulesMet: trialEnds.rulesMet })
@@ -65,24 +74,31 @@ function prepareStatements(tx: Tx) {
 const statementsOf = preparedOnce(prepareStatements)
 
 /**
- * What the flow of a day needs, of all given episodes at once: current entries since a calendar day (yyyy-mm-dd), holds and trials that still
- * run from whenever, and an earlier decision's time to look again from `lookFromMs` on. Eight statements, however many episodes.
+ * What the flow of a day needs, of all given episodes at once: current entries since a calendar day (yyyy-mm-dd), the hold and the trial started
+ * last from whenever, and an earlier decision's time to look again from `lookFromMs` on. Eight statements, however many episodes.
  */
 export function listDayEntries(tx: Tx, episodeIds: readonly string[], sinceDay: string, lookFromMs: number) {
   const statements = statementsOf(tx)
   const ofEpisodes = { ids: JSON.stringify(episodeIds), fromDay: sinceDay, lookFrom: lookFromMs }
   const holdRows = statements.holds.all(ofEpisodes)
   const trialRows = statements.trials.all(ofEpisodes)
-  const ofHolds = { ids: JSON.stringify(holdRows.filter((hold) => hold.start === 'started').map((hold) => hold.entryId)) }
-  const ofTrials = { ids: JSON.stringify(trialRows.map((trial) => trial.entryId)) }
+  const holdIds = holdRows.filter((hold) => hold.start === 'started').map((hold) => hold.entryId)
+  const trialIds = trialRows.map((trial) => trial.entryId)
+  const holdEndRows = statements.holdEnds.all({ ids: JSON.stringify(holdIds) })
+  const trialEndRows = statements.trialEnds.all({ ids: JSON.stringify(trialIds) })
+  const endedHolds = new Set(holdEndRows.map((end) => end.holdId))
+  const endedTrials = new Set(trialEndRows.map((end) => end.trialId))
+  const looksOf = (entryIds: string[], ended: Set<string>) => ({
+    ids: JSON.stringify(entryIds), runningIds: JSON.stringify(entryIds.filter((id) => !ended.has(id))),
+  })
   return {
     screens: statements.screens.all(ofEpisodes),
     holds: holdRows,
-    holdObservations: statements.holdObservations.all(ofHolds),
-    holdEnds: statements.holdEnds.all(ofHolds),
+    holdObservations: statements.holdObservations.all(looksOf(holdIds, endedHolds)),
+    holdEnds: holdEndRows,
     trials: trialRows,
-    trialObservations: statements.trialObservations.all(ofTrials),
-    trialEnds: statements.trialEnds.all(ofTrials),
+    trialObservations: statements.trialObservations.all(looksOf(trialIds, endedTrials)),
+    trialEnds: trialEndRows,
     decisions: statements.decisions.all(ofEpisodes),
   }
 }

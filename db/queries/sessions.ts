@@ -6,9 +6,17 @@ import { account, hospitals, memberships, people, rateLimit, session, sessionSta
 const prepare = (db: Db) => ({
   standing: db
     .select({
-      sessionId: session.id, createdAt: session.createdAt, expiresAt: session.expiresAt, personId: people.id, name: people.name,
-      hospitalId: people.hospitalId, isAdministrator: people.isAdministrator, deactivatedAt: people.deactivatedAt,
-      lastActiveAt: sessionStates.lastActiveAt, lockedAt: sessionStates.lockedAt, idleLockMin: hospitals.idleLockMin,
+      sessionId: session.id,
+      createdAt: session.createdAt,
+      expiresAt: session.expiresAt,
+      personId: people.id,
+      name: people.name,
+      hospitalId: people.hospitalId,
+      isAdministrator: people.isAdministrator,
+      deactivatedAt: people.deactivatedAt,
+      lastActiveAt: sessionStates.lastActiveAt,
+      lockedAt: sessionStates.lockedAt,
+      idleLockMin: hospitals.idleLockMin,
     })
     .from(session)
     .innerJoin(sessionStates, eq(sessionStates.sessionId, session.id))
@@ -52,7 +60,9 @@ export function insertSessionState(tx: Tx, row: typeof sessionStates.$inferInser
 }
 
 export function updateSessionState(
-  tx: Tx, sessionId: string, change: Partial<Pick<typeof sessionStates.$inferInsert, 'lastActiveAt' | 'lockedAt' | 'failedUnlocks'>>,
+  tx: Tx,
+  sessionId: string,
+  change: Partial<Pick<typeof sessionStates.$inferInsert, 'lastActiveAt' | 'lockedAt' | 'failedUnlocks'>>,
 ): void {
   tx.update(sessionStates).set(change).where(eq(sessionStates.sessionId, sessionId)).run()
 }
@@ -65,42 +75,72 @@ export function deleteSession(tx: Tx, sessionId: string): void {
 /** Ends the sessions of a person, all or all but one. Answers how many there were. */
 export function deleteSessionsOf(tx: Tx, personId: string, exceptSessionId: string | null = null): number {
   const others = exceptSessionId === null ? undefined : ne(session.id, exceptSessionId)
-  const ended = tx.delete(session).where(and(eq(session.userId, personId), others)).run().changes
+  const ended = tx
+    .delete(session)
+    .where(and(eq(session.userId, personId), others))
+    .run().changes
   const otherStates = exceptSessionId === null ? undefined : ne(sessionStates.sessionId, exceptSessionId)
-  tx.delete(sessionStates).where(and(eq(sessionStates.personId, personId), otherStates)).run()
+  tx.delete(sessionStates)
+    .where(and(eq(sessionStates.personId, personId), otherStates))
+    .run()
   return ended
 }
 
 /** Removes what has run out: sessions, their states, reset tokens. */
 export function deleteExpiredSessions(tx: Tx, now: number): void {
-  tx.delete(session).where(lt(session.expiresAt, new Date(now))).run()
-  tx.delete(sessionStates).where(notInArray(sessionStates.sessionId, tx.select({ id: session.id }).from(session))).run()
-  tx.delete(verification).where(lt(verification.expiresAt, new Date(now))).run()
+  tx.delete(session)
+    .where(lt(session.expiresAt, new Date(now)))
+    .run()
+  tx.delete(sessionStates)
+    .where(notInArray(sessionStates.sessionId, tx.select({ id: session.id }).from(session)))
+    .run()
+  tx.delete(verification)
+    .where(lt(verification.expiresAt, new Date(now)))
+    .run()
 }
 
 /** Hash of the password of an account; null when the person never set one. */
 export function findPasswordHash(tx: Tx, personId: string): string | null {
-  const row = tx.select({ password: account.password }).from(account)
-    .where(and(eq(account.userId, personId), eq(account.providerId, 'credential'))).get()
+  const row = tx
+    .select({ password: account.password })
+    .from(account)
+    .where(and(eq(account.userId, personId), eq(account.providerId, 'credential')))
+    .get()
   return row?.password ?? null
 }
 
 /** Which of these people have set a password. */
 export function listPeopleWithPassword(tx: Tx, personIds: readonly string[]): Set<string> {
-  const rows = tx.select({ userId: account.userId }).from(account)
-    .where(and(inArray(account.userId, [...personIds]), eq(account.providerId, 'credential'), sql`${account.password} is not null`)).all()
+  const rows = tx
+    .select({ userId: account.userId })
+    .from(account)
+    .where(
+      and(inArray(account.userId, [...personIds]), eq(account.providerId, 'credential'), sql`${account.password} is not null`),
+    )
+    .all()
   return new Set(rows.map((row) => row.userId))
 }
 
 /** Sets the password hash of a person, whether there was one or not. */
 export function savePasswordHash(tx: Tx, row: { id: string; personId: string; hash: string; now: number }): void {
-  const changed = tx.update(account).set({ password: row.hash, updatedAt: new Date(row.now) })
-    .where(and(eq(account.userId, row.personId), eq(account.providerId, 'credential'))).run().changes
+  const changed = tx
+    .update(account)
+    .set({ password: row.hash, updatedAt: new Date(row.now) })
+    .where(and(eq(account.userId, row.personId), eq(account.providerId, 'credential')))
+    .run().changes
   if (changed > 0) return
   const at = new Date(row.now)
-  tx.insert(account).values({
-    id: row.id, accountId: row.personId, providerId: 'credential', userId: row.personId, password: row.hash, createdAt: at, updatedAt: at,
-  }).run()
+  tx.insert(account)
+    .values({
+      id: row.id,
+      accountId: row.personId,
+      providerId: 'credential',
+      userId: row.personId,
+      password: row.hash,
+      createdAt: at,
+      updatedAt: at,
+    })
+    .run()
 }
 
 export function deletePassword(tx: Tx, personId: string): void {
@@ -116,8 +156,10 @@ export function findAllowance(tx: Tx, key: string) {
 }
 
 export function saveAllowance(tx: Tx, row: { id: string; key: string; count: number; lastRequest: number }): void {
-  tx.insert(rateLimit).values(row)
-    .onConflictDoUpdate({ target: rateLimit.key, set: { count: row.count, lastRequest: row.lastRequest } }).run()
+  tx.insert(rateLimit)
+    .values(row)
+    .onConflictDoUpdate({ target: rateLimit.key, set: { count: row.count, lastRequest: row.lastRequest } })
+    .run()
 }
 
 export function deleteAllowance(tx: Tx, key: string): void {
@@ -130,6 +172,9 @@ export function deleteAllowancesBefore(tx: Tx, before: number): void {
 
 /** Sessions of a person that have not run out. */
 export function countOpenSessions(tx: Tx, personId: string, now: number): number {
-  return tx.select({ id: session.id }).from(session)
-    .where(and(eq(session.userId, personId), gt(session.expiresAt, new Date(now)))).all().length
+  return tx
+    .select({ id: session.id })
+    .from(session)
+    .where(and(eq(session.userId, personId), gt(session.expiresAt, new Date(now))))
+    .all().length
 }

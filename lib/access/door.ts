@@ -1,6 +1,11 @@
 import 'server-only'
 import {
-  findEpisode, findLatestStay, findPatientOfHospital, findUnit, findUnitAmong, findValidOpening,
+  findEpisode,
+  findLatestStay,
+  findPatientOfHospital,
+  findUnit,
+  findUnitAmong,
+  findValidOpening,
 } from '@/db/queries/access'
 import type { episodes, patients, stays, units } from '@/db/schema'
 import { writeAudit } from '@/lib/server/audit'
@@ -27,7 +32,9 @@ export function authorize(ctx: Ctx, action: Action, target: { patientId: string 
 export function authorize(ctx: Ctx, action: Action, target: { unitId: string }): InUnit
 export function authorize(ctx: Ctx, action: Action, target: 'hospital' | 'self'): PersonCtx
 export function authorize(
-  ctx: Ctx, action: Action, target: { episodeId: string } | { patientId: string } | { unitId: string } | 'hospital' | 'self',
+  ctx: Ctx,
+  action: Action,
+  target: { episodeId: string } | { patientId: string } | { unitId: string } | 'hospital' | 'self',
 ): EpisodeInUnit | PatientInUnit | InUnit | PersonCtx {
   const rule = POLICY[action] as (typeof POLICY)[Action] | undefined
   if (rule === undefined) return refuse(ctx, action, null, 'FORBIDDEN')
@@ -52,7 +59,12 @@ function authorizeUnit(ctx: Ctx, action: Action, unitId: string): UnitRow {
     return findUnit(ctx.db, unitId) ?? refuse(ctx, action, subject, 'NOT_FOUND')
   }
   const { memberships, hospitalId } = ctx.actor
-  const unit = findUnitAmong(ctx.db, unitId, hospitalId, memberships.map((held) => held.unitId))
+  const unit = findUnitAmong(
+    ctx.db,
+    unitId,
+    hospitalId,
+    memberships.map((held) => held.unitId),
+  )
   if (!unit) return refuse(ctx, action, subject, 'NOT_FOUND')
   if (!mayInUnit(memberships, action, unitId)) return refuse(ctx, action, subject, 'FORBIDDEN', unitId)
   return unit
@@ -82,14 +94,22 @@ const MESSAGES = {
 } as const
 
 function refuse(
-  ctx: Ctx, action: Action, subject: { kind: string; id: string } | null, code: Extract<ErrorCode, 'FORBIDDEN' | 'NOT_FOUND'>,
+  ctx: Ctx,
+  action: Action,
+  subject: { kind: string; id: string } | null,
+  code: Extract<ErrorCode, 'FORBIDDEN' | 'NOT_FOUND'>,
   unitId: string | null = null,
 ): never {
   ctx.db.transaction(
     (tx) => {
       // An id that was asked for is the client's invention: no longer than ours are.
       const asked = subject && { ...subject, id: subject.id.slice(0, LONGEST_ID) }
-      writeAudit(tx, ctx, { action: 'access.denied', unitId, ...(asked ? { subject: asked } : {}), after: { asked: action, code } })
+      writeAudit(tx, ctx, {
+        action: 'access.denied',
+        unitId,
+        ...(asked ? { subject: asked } : {}),
+        after: { asked: action, code },
+      })
     },
     { behavior: 'immediate' },
   )

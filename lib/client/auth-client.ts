@@ -15,6 +15,13 @@ export function joinTabs(hear: (news: SessionNews) => void): { tell: (news: Sess
   return { tell: (news) => channel.postMessage(news), leave: () => channel.close() }
 }
 
+/** Tells the other tabs once, from a page that does not listen to them. */
+export function tellTabs(news: SessionNews): void {
+  const tabs = joinTabs(() => {})
+  tabs.tell(news)
+  tabs.leave()
+}
+
 /** Covers this page at once and locks the session; for the "lock now" entry of a menu. */
 export function lockScreen(): void {
   window.dispatchEvent(new Event(LOCKED_EVENT))
@@ -22,7 +29,9 @@ export function lockScreen(): void {
 
 /** Tells the server that the screen is locked. A failure is harmless: the server locks by itself once the time is over. */
 export async function sendLock(): Promise<void> {
-  await fetch('/api/session/lock', { method: 'POST', headers: { 'content-type': 'application/json' }, body: '{}' }).catch(() => undefined)
+  await fetch('/api/session/lock', { method: 'POST', headers: { 'content-type': 'application/json' }, body: '{}' }).catch(
+    () => undefined,
+  )
 }
 
 /** Who is signed in, also at a locked screen; null when nobody is, undefined when the server gives no answer. */
@@ -39,8 +48,6 @@ export async function fetchMe(isActive: boolean): Promise<MeDto | null | undefin
 /** Ends this session, here and in the other tabs, and goes to the sign-in page. Throws ApiError when the server gives no answer. */
 export async function signOut(): Promise<void> {
   await apiPost('/api/auth/sign-out', {})
-  const tabs = joinTabs(() => {})
-  tabs.tell({ kind: 'signed_out' })
-  tabs.leave()
+  tellTabs({ kind: 'signed_out' })
   leaveFor('/sign-in')
 }

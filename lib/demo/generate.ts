@@ -35,20 +35,45 @@ export function generateDemo({ seed, nowMs, timeZone, historyDays, units }: Demo
   const calendar = makeCalendar(nowMs, timeZone, historyDays)
   const world: World = { random, calendar, nowMs, hospitalId: random.id(), units: [], rows: emptySeedRows() }
   const createdAt = calendar.at(0, 0)
-  world.rows.hospitals.push({ id: world.hospitalId, name: 'Kestrel Ridge Hospital', isDemo: true, idleLockMin: 15, createdAt, version: 1 })
+  world.rows.hospitals.push({
+    id: world.hospitalId,
+    name: 'Kestrel Ridge Hospital',
+    isDemo: true,
+    idleLockMin: 15,
+    createdAt,
+    version: 1,
+  })
   for (const spec of units) addUnit(world, spec, timeZone, createdAt)
   const { accounts, leadId, physicianId } = addStaff(world)
   world.units.forEach((unit, place) => addProtocols(world, unit, place, { lead: leadId, physician: physicianId }))
-  writeHistory(world, units.flatMap((spec, index) => writePresent(world, spec, index)))
+  writeHistory(
+    world,
+    units.flatMap((spec, index) => writePresent(world, spec, index)),
+  )
   return { rows: world.rows, accounts, unitIds: world.units.map(({ id }) => id) }
 }
 
 function addUnit({ random, rows, units, hospitalId }: World, spec: DemoUnitSpec, timeZone: string, createdAt: number): void {
-  const unit: DemoUnit = { id: random.id(), name: spec.name, beds: [], protocols: [], staff: { rt: [], nurse: [], physician: [] } }
+  const unit: DemoUnit = {
+    id: random.id(),
+    name: spec.name,
+    beds: [],
+    protocols: [],
+    staff: { rt: [], nurse: [], physician: [] },
+  }
   units.push(unit)
   rows.units.push({
-    id: unit.id, hospitalId, name: spec.name, timeZone, altitudeM: ALTITUDE_M, barometricPressureMmHg: null, dayTrackFromHour: 4, dayTrackToHour: 20,
-    createdAt, retiredAt: null, version: 1,
+    id: unit.id,
+    hospitalId,
+    name: spec.name,
+    timeZone,
+    altitudeM: ALTITUDE_M,
+    barometricPressureMmHg: null,
+    dayTrackFromHour: 4,
+    dayTrackToHour: 20,
+    createdAt,
+    retiredAt: null,
+    version: 1,
   })
   for (let number = 1; number <= spec.beds; number += 1) {
     const bed = { id: random.id(), label: `${spec.prefix}${String(number).padStart(2, '0')}` }

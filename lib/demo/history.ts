@@ -44,7 +44,13 @@ function planStay(world: World, bed: HistoryBed, monthNoise: Map<string, number>
   const { random, calendar } = world
   const startMs = bed.freeMs + Math.round(-Math.log(1 - random.next()) * 6) * HOUR_MS + random.whole(20, 90) * 60_000
   const elapsed = calendar.indexOf(startMs) / Math.max(1, calendar.todayIndex)
-  if (!random.chance(0.5 - 0.07 * elapsed)) return { startMs, endMs: startMs + Math.round(random.between(0.7, 4.2) * DAY_MS), end: random.chance(0.03) ? 'died' : 'left_unit', episodes: [] }
+  if (!random.chance(0.5 - 0.07 * elapsed))
+    return {
+      startMs,
+      endMs: startMs + Math.round(random.between(0.7, 4.2) * DAY_MS),
+      end: random.chance(0.03) ? 'died' : 'left_unit',
+      episodes: [],
+    }
   const month = calendar.dayOf(startMs).slice(0, 7)
   const noise = monthNoise.get(month) ?? random.between(0.9, 1.1)
   monthNoise.set(month, noise)
@@ -65,10 +71,22 @@ function planVentilated(world: World, startMs: number, begunMs: number, isArrive
     if (isComfort) return { startMs, endMs: endMs + Math.round(random.between(0.5, 20) * HOUR_MS), end: 'died', episodes }
     const risk = end === 'ventilator_off' ? 0 : end === 'extubated' ? REINTUBATED.planned : REINTUBATED.unplanned
     if (episodes.length < 3 && random.chance(risk)) {
-      episodes.push(planEpisode(world, endMs + Math.round(hoursToReintubation(world, end === 'extubated') * HOUR_MS), 'reintubated', medianDays))
+      episodes.push(
+        planEpisode(
+          world,
+          endMs + Math.round(hoursToReintubation(world, end === 'extubated') * HOUR_MS),
+          'reintubated',
+          medianDays,
+        ),
+      )
       continue
     }
-    return { startMs, endMs: endMs + Math.round(random.between(0.8, 3) * DAY_MS), end: random.chance(0.02) ? 'died' : 'left_unit', episodes }
+    return {
+      startMs,
+      endMs: endMs + Math.round(random.between(0.8, 3) * DAY_MS),
+      end: random.chance(0.02) ? 'died' : 'left_unit',
+      episodes,
+    }
   }
 }
 
@@ -83,9 +101,10 @@ function hoursToReintubation({ random }: World, wasPlanned: boolean): number {
 function placeStay(world: World, beds: HistoryBed[], bed: HistoryBed, plan: StayPlan): void {
   const { random } = world
   const moveMs = Math.round(random.between(plan.startMs + 10 * HOUR_MS, plan.endMs - 10 * HOUR_MS))
-  const target = plan.endMs - plan.startMs > 1.5 * DAY_MS && random.chance(0.08)
-    ? beds.find((one) => one.unit !== bed.unit && one.freeMs < moveMs - HOUR_MS && one.takenMs > plan.endMs + HOUR_MS)
-    : undefined
+  const target =
+    plan.endMs - plan.startMs > 1.5 * DAY_MS && random.chance(0.08)
+      ? beds.find((one) => one.unit !== bed.unit && one.freeMs < moveMs - HOUR_MS && one.takenMs > plan.endMs + HOUR_MS)
+      : undefined
   const { startMs, endMs, end } = plan
   const stays: PlacedStay[] = target
     ? [
@@ -97,5 +116,6 @@ function placeStay(world: World, beds: HistoryBed[], bed: HistoryBed, plan: Stay
   if (target) target.freeMs = endMs
   const patient = addPatient(world, startMs)
   addStays(world, patient, stays)
-  for (const episode of plan.episodes) writeEpisode(world, patient, stays, episode, { settingsPerDay: 2, throughIndex: world.calendar.todayIndex, isScreened: true })
+  for (const episode of plan.episodes)
+    writeEpisode(world, patient, stays, episode, { settingsPerDay: 2, throughIndex: world.calendar.todayIndex, isScreened: true })
 }

@@ -2,7 +2,8 @@
 const words = (text: string) => text.trim().split(/\s+/)
 
 export const GIVEN_NAMES = {
-  female: words(`Abena Ailsa Amara Anouk Beatriz Bronwen Chiara Daniela Delphine Edda Efua Elif Farida Fiona Greta Hanneke Hye-jin Ines Ingrid
+  female:
+    words(`Abena Ailsa Amara Anouk Beatriz Bronwen Chiara Daniela Delphine Edda Efua Elif Farida Fiona Greta Hanneke Hye-jin Ines Ingrid
     Jasmin Johanna Kalinda Katarzyna Leilani Ligia Lucía Mahsa Marit Mei Nadia Naledi Ngozi Noor Oksana Olwen Parisa Petra Priya Quyen Rania
     Roza Saanvi Safiya Sigrid Soledad Taini Thandi Tova Ursula Valeria Wanjiru Xiomara Yael Yuki Zainab Zofia`),
   male: words(`Adewale Aidan Andrei Arjun Bashir Benedikt Callum Chidi Cyrus Dariusz Diego Eamon Emre Ezra Farhan Faustino Gareth Giorgos Hamid
@@ -10,7 +11,8 @@ export const GIVEN_NAMES = {
     Rafael Ravi Ruben Sanjay Sione Stellan Tariq Teodor Tomasz Umar Viktor Wen Xavier Yusuf Zoltan`),
 } as const
 
-export const FAMILY_NAMES = words(`Abara Achterberg Adeyemi Almqvist Arslan Aster Bainbridge Balogun Bellweather Bergdahl Bianchini Brannock
+export const FAMILY_NAMES =
+  words(`Abara Achterberg Adeyemi Almqvist Arslan Aster Bainbridge Balogun Bellweather Bergdahl Bianchini Brannock
   Caldera Castellane Chaudry Cho Cosgrave Cruickshank Dalgaard Darko Delacroix Demirtas Dufresne Eastman Eklund Ellery Espinoza Fairweather Farrow
   Ferreira Fontaine Gallardo Ganesan Garrick Ghorbani Goldthwaite Grünwald Haddad Halloran Hartvig Hasegawa Herrera Holloway Ibarra Ilves Iyer
   Jankowski Jarrah Joubert Kahale Kallio Kamara Kang Karimov Keswick Kowalczyk Kruse Laidlaw Lakshman Larkspur Lindqvist Lovelock Machado Mahlangu

@@ -39,6 +39,15 @@ export function addStays({ rows, random }: World, patient: DemoPatient, stays: r
   if (!first) throw new Error('A patient needs a bed.')
   patient.createdBy = random.pick(first.unit.staff.nurse)
   for (const { unit, bed, startMs, endMs, end } of stays) {
-    rows.stays.push({ id: random.id(), patientId: patient.id, unitId: unit.id, bedId: bed.id, startedAt: startMs, endedAt: endMs, end, version: 1 })
+    rows.stays.push({
+      id: random.id(),
+      patientId: patient.id,
+      unitId: unit.id,
+      bedId: bed.id,
+      startedAt: startMs,
+      endedAt: endMs,
+      end,
+      version: 1,
+    })
   }
 }

@@ -34,7 +34,11 @@ export function makeVitals(random: Random, severity: number, heightCm: number): 
     severity,
     fio2Fraction,
     peepCmH2O: isReady ? random.whole(5, 8) : Math.round(within(8, 16, 5 + 9 * severity + random.normal(0, 1))),
-    norepinephrineMcgPerKgMin: isReady ? (random.chance(0.3) ? rounded(random.between(0.02, 0.08), 0.01) : 0) : rounded(within(0, 0.6, random.normal(0.25 * severity, 0.08)), 0.01),
+    norepinephrineMcgPerKgMin: isReady
+      ? random.chance(0.3)
+        ? rounded(random.between(0.02, 0.08), 0.01)
+        : 0
+      : rounded(within(0, 0.6, random.normal(0.25 * severity, 0.08)), 0.01),
     breathsPerMin: Math.round(within(11, 32, random.normal(16 + 8 * severity, 2.5))),
     tidalVolumeMl: rounded((heightCm - 100) * random.between(5.6, 7.2), 10),
     spo2Percent: Math.round(within(89, 99, random.normal(95.5 - 3 * severity, 1.3))),

@@ -38,7 +38,14 @@ export function planScreen({ random, calendar }: World, dayIndex: number): { atM
 
 function planUnsafe(world: World, dayIndex: number): DayScript {
   const screen = planScreen(world, dayIndex)
-  return { screen, hold: { kind: 'unsafe', atMs: screen.atMs + world.random.whole(5, 60) * MINUTE_MS, item: world.random.pick(HOLD_SAFETY_ITEMS) } }
+  return {
+    screen,
+    hold: {
+      kind: 'unsafe',
+      atMs: screen.atMs + world.random.whole(5, 60) * MINUTE_MS,
+      item: world.random.pick(HOLD_SAFETY_ITEMS),
+    },
+  }
 }
 
 function planNotTolerated(world: World, dayIndex: number): DayScript {
@@ -63,7 +70,11 @@ function planFailedTrial(world: World, dayIndex: number): DayScript {
     return { minute, strain: fromEnd <= 1 ? random.between(1, 1.15) : 0.55 }
   })
   const trial: TrialScript = {
-    startMs: readyMs, plannedMin: 30, looks, endMs: readyMs + (failAt + random.whole(1, 4)) * MINUTE_MS, outcome: 'failed',
+    startMs: readyMs,
+    plannedMin: 30,
+    looks,
+    endMs: readyMs + (failAt + random.whole(1, 4)) * MINUTE_MS,
+    outcome: 'failed',
   }
   return { ...script, trial }
 }
@@ -71,7 +82,16 @@ function planFailedTrial(world: World, dayIndex: number): DayScript {
 function planStoppedTrial(world: World, dayIndex: number): DayScript {
   const { script, readyMs } = planHold(world, dayIndex)
   const looks = [2, 5, 10].map((minute) => ({ minute, strain: 0.2 }))
-  return { ...script, trial: { startMs: readyMs, plannedMin: 30, looks, endMs: readyMs + world.random.whole(11, 20) * MINUTE_MS, outcome: 'stopped' } }
+  return {
+    ...script,
+    trial: {
+      startMs: readyMs,
+      plannedMin: 30,
+      looks,
+      endMs: readyMs + world.random.whole(11, 20) * MINUTE_MS,
+      outcome: 'stopped',
+    },
+  }
 }
 
 function planPassedTrial(world: World, dayIndex: number): { script: DayScript; trialEndMs: number } {
@@ -79,13 +99,19 @@ function planPassedTrial(world: World, dayIndex: number): { script: DayScript; t
   const { script, readyMs } = planHold(world, dayIndex)
   const plannedMin = random.chance(0.75) ? 30 : 60
   const strain = random.between(0.08, 0.45)
-  const looks = LOOK_MINUTES.filter((minute) => minute <= plannedMin).map((minute) => ({ minute, strain: strain * random.between(0.6, 1) }))
+  const looks = LOOK_MINUTES.filter((minute) => minute <= plannedMin).map((minute) => ({
+    minute,
+    strain: strain * random.between(0.6, 1),
+  }))
   const endMs = readyMs + (plannedMin + random.whole(0, 5)) * MINUTE_MS
   return { script: { ...script, trial: { startMs: readyMs, plannedMin, looks, endMs, outcome: 'passed' } }, trialEndMs: endMs }
 }
 
 /** Screen and hold of a day that leads to a trial, and when the trial begins: within two hours of the hold on most days, not on all. */
-function planHold(world: World, dayIndex: number): { script: { screen: { atMs: number; kind: 'readings' | 'incomplete' }; hold: HoldScript }; readyMs: number } {
+function planHold(
+  world: World,
+  dayIndex: number,
+): { script: { screen: { atMs: number; kind: 'readings' | 'incomplete' }; hold: HoldScript }; readyMs: number } {
   const { random } = world
   const screen = planScreen(world, dayIndex)
   if (random.chance(0.4)) {
@@ -97,5 +123,8 @@ function planHold(world: World, dayIndex: number): { script: { screen: { atMs: n
   const lookMinutes = last > 35 ? [Math.round(last / 2), last] : [last]
   const endMs = startMs + (last + random.whole(1, 4)) * MINUTE_MS
   const waitMin = random.chance(0.75) ? random.whole(5, 50) : random.whole(90, 200)
-  return { script: { screen, hold: { kind: 'started', startMs, lookMinutes, endMs, outcome: 'tolerated' } }, readyMs: endMs + waitMin * MINUTE_MS }
+  return {
+    script: { screen, hold: { kind: 'started', startMs, lookMinutes, endMs, outcome: 'tolerated' } },
+    readyMs: endMs + waitMin * MINUTE_MS,
+  }
 }

@@ -23,7 +23,8 @@ export function planEpisode(world: World, startMs: number, start: EpisodeStart, 
   const fate = random.next()
   const base = { startMs, start, lastDay: null, isComfort: false, tracheostomyMs: null }
   const someTime = () => calendar.at(lastIndex, random.whole(20, 1420))
-  if (random.chance(1 - 0.989 ** days)) return { ...base, endMs: someTime(), end: random.chance(0.8) ? 'self_extubated' : 'accidentally_extubated' }
+  if (random.chance(1 - 0.989 ** days))
+    return { ...base, endMs: someTime(), end: random.chance(0.8) ? 'self_extubated' : 'accidentally_extubated' }
   if (fate < 0.11) return { ...base, endMs: someTime(), end: 'died' }
   if (fate < 0.15) return planComfort(world, base, lastIndex)
   if (fate < 0.17) return { ...base, endMs: calendar.at(lastIndex, random.whole(600, 1000)), end: 'left_hospital' }
@@ -35,12 +36,23 @@ export function planEpisode(world: World, startMs: number, start: EpisodeStart, 
   return { ...base, endMs: extubatedMs, end: 'extubated', lastDay: script }
 }
 
-function planComfort(world: World, base: Pick<EpisodePlan, 'startMs' | 'start' | 'tracheostomyMs'>, lastIndex: number): EpisodePlan {
+function planComfort(
+  world: World,
+  base: Pick<EpisodePlan, 'startMs' | 'start' | 'tracheostomyMs'>,
+  lastIndex: number,
+): EpisodePlan {
   const { random, calendar } = world
   const atMs = calendar.at(lastIndex, random.whole(620, 960))
   const lastDay: DayScript = {
     screen: { atMs: calendar.at(lastIndex, random.whole(310, 500)), kind: 'excused', excuse: 'comfort_care', note: null },
-    decision: { atMs, choice: 'comfort_extubation', reasons: [], lookAgainMs: null, supportAfter: 'oxygen', note: 'After talks with the family. Invented.' },
+    decision: {
+      atMs,
+      choice: 'comfort_extubation',
+      reasons: [],
+      lookAgainMs: null,
+      supportAfter: 'oxygen',
+      note: 'After talks with the family. Invented.',
+    },
   }
   return { ...base, lastDay, isComfort: true, endMs: atMs + random.between(0.5, 2) * HOUR_MS, end: 'extubated' }
 }

@@ -35,16 +35,36 @@ export function ventilated(given: Ventilated): Scene {
     const stays: PlacedStay[] = [{ unit, bed, startMs: admittedMs, endMs: null, end: null }]
     addStays(world, patient, stays)
     const tracheostomyMs = given.hasTracheostomy ? calendar.at(calendar.todayIndex - Math.ceil(daysAgo / 2), 700) : null
-    const plan: EpisodePlan = { startMs: startedMs, start: 'intubated', endMs: null, end: null, lastDay: null, isComfort: false, tracheostomyMs }
+    const plan: EpisodePlan = {
+      startMs: startedMs,
+      start: 'intubated',
+      endMs: null,
+      end: null,
+      lastDay: null,
+      isComfort: false,
+      tracheostomyMs,
+    }
     const course = writeEpisode(world, patient, stays, plan, {
-      settingsPerDay: 3, throughIndex: calendar.todayIndex - 1, isScreened: given.ageYears === undefined,
+      settingsPerDay: 3,
+      throughIndex: calendar.todayIndex - 1,
+      isScreened: given.ageYears === undefined,
     })
-    const vitals = makeVitals(random, given.isIll ? random.between(0.5, 0.75) : random.between(0.06, 0.2), patient.heightCm ?? 170)
+    const vitals = makeVitals(
+      random,
+      given.isIll ? random.between(0.5, 0.75) : random.between(0.06, 0.2),
+      patient.heightCm ?? 170,
+    )
     const at = (minutes: number) => Math.min(calendar.at(calendar.todayIndex, minutes), nowMs - MINUTE_MS)
     writeGas(world, course, at(random.whole(285, 350)), vitals)
     writeSettings(world, course, at(random.whole(270, 284)), vitals)
     given.after?.(world, course, vitals)
-    if (given.today) writeDay(world, course, vitals, given.today(at, (minutes) => Math.floor(nowMs / MINUTE_MS - minutes) * MINUTE_MS))
+    if (given.today)
+      writeDay(
+        world,
+        course,
+        vitals,
+        given.today(at, (minutes) => Math.floor(nowMs / MINUTE_MS - minutes) * MINUTE_MS),
+      )
     return admittedMs
   }
 }
@@ -57,9 +77,19 @@ export const startedAfterWindow: Scene = (world, { unit, bed }) => {
   const stays: PlacedStay[] = [{ unit, bed, startMs: admittedMs, endMs: null, end: null }]
   addStays(world, patient, stays)
   const plan: EpisodePlan = {
-    startMs: Math.floor(nowMs / MINUTE_MS - 21) * MINUTE_MS, start: 'intubated', endMs: null, end: null, lastDay: null, isComfort: false, tracheostomyMs: null,
+    startMs: Math.floor(nowMs / MINUTE_MS - 21) * MINUTE_MS,
+    start: 'intubated',
+    endMs: null,
+    end: null,
+    lastDay: null,
+    isComfort: false,
+    tracheostomyMs: null,
   }
-  const course = writeEpisode(world, patient, stays, plan, { settingsPerDay: 3, throughIndex: world.calendar.todayIndex - 1, isScreened: true })
+  const course = writeEpisode(world, patient, stays, plan, {
+    settingsPerDay: 3,
+    throughIndex: world.calendar.todayIndex - 1,
+    isScreened: true,
+  })
   writeSettings(world, course, Math.floor(nowMs / MINUTE_MS - 9) * MINUTE_MS, makeVitals(random, 0.8, patient.heightCm ?? 170))
   return admittedMs
 }
@@ -82,7 +112,15 @@ export const inWatch: Scene = (world, { unit, bed }) => {
   const stays: PlacedStay[] = [{ unit, bed, startMs: admittedMs, endMs: null, end: null }]
   addStays(world, patient, stays)
   const { script, extubatedMs } = planLiberation(world, yesterday)
-  const plan: EpisodePlan = { startMs, start: 'intubated', endMs: extubatedMs, end: 'extubated', lastDay: script, isComfort: false, tracheostomyMs: null }
+  const plan: EpisodePlan = {
+    startMs,
+    start: 'intubated',
+    endMs: extubatedMs,
+    end: 'extubated',
+    lastDay: script,
+    isComfort: false,
+    tracheostomyMs: null,
+  }
   writeEpisode(world, patient, stays, plan, { settingsPerDay: random.whole(3, 4), throughIndex: yesterday, isScreened: true })
   return admittedMs
 }

@@ -1,8 +1,18 @@
-import type { DecisionChoice, ExcuseReason, HoldOutcome, HoldSafetyItem, NotTodayReason, SupportAfter, TrialOutcome } from '@/lib/weaning/vocabulary'
+import type {
+  DecisionChoice,
+  ExcuseReason,
+  HoldOutcome,
+  HoldSafetyItem,
+  NotTodayReason,
+  SupportAfter,
+  TrialOutcome,
+} from '@/lib/weaning/vocabulary'
 
 /** What happens in one patient's ventilator day. Moments in UTC milliseconds; an end of null is still to come. */
 export type DayScript = {
-  screen?: { atMs: number; kind: 'readings' | 'incomplete' } | { atMs: number; kind: 'excused'; excuse: ExcuseReason; note: string | null }
+  screen?:
+    | { atMs: number; kind: 'readings' | 'incomplete' }
+    | { atMs: number; kind: 'excused'; excuse: ExcuseReason; note: string | null }
   hold?: HoldScript
   trial?: TrialScript
   decision?: DecisionScript

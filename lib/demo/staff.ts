@@ -28,7 +28,9 @@ const colleagues = (role: ClinicalRole, works: Works, count: number): Post[] =>
 /** The rest of the staff is there as authors of two years of entries; they have no password and cannot sign in. */
 function posts(unitCount: number): Post[] {
   const ofUnits = Array.from({ length: unitCount }, (_, unit) => [
-    ...colleagues('rt', unit, 2), ...colleagues('nurse', unit, 3), ...colleagues('physician', unit, 2),
+    ...colleagues('rt', unit, 2),
+    ...colleagues('nurse', unit, 3),
+    ...colleagues('physician', unit, 2),
     { email: '', roles: ['physician', 'unit_lead'] as ClinicalRole[], works: unit, signsIn: null },
   ])
   return [...SIGN_INS, ...ofUnits.flat()]
@@ -40,13 +42,26 @@ export function addStaff(world: World): { accounts: DemoAccount[]; leadId: strin
   const taken = new Set<string>()
   for (const post of posts(world.units.length)) {
     const name = newName(world, taken)
-    const email = `${post.email || name.toLowerCase().normalize('NFD').replace(/[^a-z]+/g, '.')}@${MAIL}`
+    const email = `${
+      post.email ||
+      name
+        .toLowerCase()
+        .normalize('NFD')
+        .replace(/[^a-z]+/g, '.')
+    }@${MAIL}`
     const personId = addPerson(world, name, email, post.signsIn === 'administrator')
     if (post.signsIn) accounts.push({ role: post.signsIn, email, personId })
     world.units.forEach((unit, index) => {
       if (post.works !== 'all' && post.works !== index) return
       for (const role of post.roles) {
-        world.rows.memberships.push({ id: world.random.id(), personId, unitId: unit.id, role, startedAt: world.calendar.at(0, 0), endedAt: null })
+        world.rows.memberships.push({
+          id: world.random.id(),
+          personId,
+          unitId: unit.id,
+          role,
+          startedAt: world.calendar.at(0, 0),
+          endedAt: null,
+        })
         if (role !== 'unit_lead') unit.staff[role].push(personId)
       }
     })

@@ -19,7 +19,13 @@ export type World = { random: Random; calendar: Calendar; nowMs: number; hospita
 
 export type DemoPatient = SeedRows['patients'][number]
 /** Where the patient was: consecutive stays, the last one open for those still there. */
-export type PlacedStay = { unit: DemoUnit; bed: { id: string }; startMs: number; endMs: number | null; end: 'moved' | 'left_unit' | 'died' | null }
+export type PlacedStay = {
+  unit: DemoUnit
+  bed: { id: string }
+  startMs: number
+  endMs: number | null
+  end: 'moved' | 'left_unit' | 'died' | null
+}
 
 /** One run of ventilation while its entries are written. */
 export type Course = { episodeId: string; patient: DemoPatient; stays: readonly PlacedStay[] }
@@ -43,8 +49,18 @@ export function entry(world: World, course: Course, observedAt: number, role: ke
   const id = random.id()
   const lagMin = lateMin ?? (random.chance(0.04) ? random.between(40, 200) : random.between(1, 9))
   return {
-    id, entryId: id, entryVersion: 1, supersedesId: null, amendReason: null, isWithdrawn: false, episodeId: course.episodeId, unitId: unit.id,
-    ventilatorDay: calendar.dayOf(observedAt), observedAt, recordedAt: Math.max(observedAt, Math.min(nowMs, observedAt + Math.round(lagMin * MINUTE_MS))),
-    recordedBy: random.pick(unit.staff[role]), protocolVersionId: protocolAt(unit, observedAt).id,
+    id,
+    entryId: id,
+    entryVersion: 1,
+    supersedesId: null,
+    amendReason: null,
+    isWithdrawn: false,
+    episodeId: course.episodeId,
+    unitId: unit.id,
+    ventilatorDay: calendar.dayOf(observedAt),
+    observedAt,
+    recordedAt: Math.max(observedAt, Math.min(nowMs, observedAt + Math.round(lagMin * MINUTE_MS))),
+    recordedBy: random.pick(unit.staff[role]),
+    protocolVersionId: protocolAt(unit, observedAt).id,
   }
 }

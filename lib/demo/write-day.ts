@@ -19,7 +19,14 @@ export function writeDay(world: World, course: Course, vitals: Vitals, script: D
 function writeScreen(world: World, course: Course, vitals: Vitals, script: NonNullable<DayScript['screen']>): void {
   const base = entry(world, course, script.atMs, 'rt')
   if (script.kind === 'excused') {
-    world.rows.screens.push({ ...base, result: 'excused', excuse: script.excuse, note: script.note, readings: null, verdict: null })
+    world.rows.screens.push({
+      ...base,
+      result: 'excused',
+      excuse: script.excuse,
+      note: script.note,
+      readings: null,
+      verdict: null,
+    })
     return
   }
   const readings = screenReadings(world.random, vitals, script.kind === 'incomplete')

@@ -14,10 +14,21 @@ export function writeDecision(world: World, course: Course, script: DecisionScri
   const plan = { reasons, lookAgainAt: script.lookAgainMs, supportAfter, steroidsPlanned, note }
   const words = signedStatement(
     { choice, ...plan, lookAgainWords: script.lookAgainMs === null ? null : clock(world, script.lookAgainMs) },
-    { name: nameOf(world, base.recordedBy), unitName: unitAt(course.stays, script.atMs).name, timeWords: clock(world, script.atMs) },
+    {
+      name: nameOf(world, base.recordedBy),
+      unitName: unitAt(course.stays, script.atMs).name,
+      timeWords: clock(world, script.atMs),
+    },
   )
   const statement = `Invented. ${words}`
-  world.rows.decisions.push({ ...base, choice, ...plan, evidence, contentHash: contentHash({ evidence, choice, plan, statement }), statement })
+  world.rows.decisions.push({
+    ...base,
+    choice,
+    ...plan,
+    evidence,
+    contentHash: contentHash({ evidence, choice, plan, statement }),
+    statement,
+  })
 }
 
 function nameOf({ rows }: World, personId: string): string {

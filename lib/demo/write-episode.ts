@@ -17,15 +17,29 @@ type Options = {
 }
 
 /** Adds an episode with its airway events and the entries of each of its days. Answers the course, for what is still to be written. */
-export function writeEpisode(world: World, patient: DemoPatient, stays: readonly PlacedStay[], plan: EpisodePlan, options: Options): Course {
+export function writeEpisode(
+  world: World,
+  patient: DemoPatient,
+  stays: readonly PlacedStay[],
+  plan: EpisodePlan,
+  options: Options,
+): Course {
   const { calendar, random, rows } = world
   const course: Course = { episodeId: random.id(), patient, stays }
   const startUnit = unitAt(stays, plan.startMs)
   rows.episodes.push({
-    id: course.episodeId, patientId: patient.id, startedAt: plan.startMs, start: plan.start,
-    airway: plan.tracheostomyMs === null ? 'endotracheal_tube' : 'tracheostomy', endedAt: plan.endMs, end: plan.end, recordedAt: plan.startMs + 6 * MINUTE_MS,
-    recordedBy: random.pick(startUnit.staff.rt), endRecordedAt: plan.endMs === null ? null : Math.min(world.nowMs, plan.endMs + 5 * MINUTE_MS),
-    endRecordedBy: plan.endMs === null ? null : random.pick(unitAt(stays, plan.endMs).staff.rt), version: plan.endMs === null ? 1 : 2,
+    id: course.episodeId,
+    patientId: patient.id,
+    startedAt: plan.startMs,
+    start: plan.start,
+    airway: plan.tracheostomyMs === null ? 'endotracheal_tube' : 'tracheostomy',
+    endedAt: plan.endMs,
+    end: plan.end,
+    recordedAt: plan.startMs + 6 * MINUTE_MS,
+    recordedBy: random.pick(startUnit.staff.rt),
+    endRecordedAt: plan.endMs === null ? null : Math.min(world.nowMs, plan.endMs + 5 * MINUTE_MS),
+    endRecordedBy: plan.endMs === null ? null : random.pick(unitAt(stays, plan.endMs).staff.rt),
+    version: plan.endMs === null ? 1 : 2,
   })
   writeAirwayEvents(world, course, plan)
   const firstIndex = calendar.indexOf(plan.startMs)
@@ -37,7 +51,8 @@ export function writeEpisode(world: World, patient: DemoPatient, stays: readonly
     const progress = lastIndex === firstIndex ? 1 : (index - firstIndex) / (lastIndex - firstIndex)
     const severity = severityOn(world, plan, { progress, illness, readyFrom, isLast })
     const vitals = makeVitals(random, severity, patient.heightCm ?? 170)
-    const script = isLast && plan.lastDay ? plan.lastDay : options.isScreened ? scriptOf(world, course, plan, index, severity) : {}
+    const script =
+      isLast && plan.lastDay ? plan.lastDay : options.isScreened ? scriptOf(world, course, plan, index, severity) : {}
     writeDay(world, course, vitals, withinEpisode(script, plan, world.nowMs))
     writeReadings(world, course, plan, index, vitals, options.settingsPerDay)
   }
@@ -50,7 +65,8 @@ function writeAirwayEvents(world: World, course: Course, plan: EpisodePlan): voi
   add(plan.start, plan.startMs)
   if (plan.tracheostomyMs !== null) add('tracheostomy_placed', plan.tracheostomyMs)
   const end = AIRWAY_EVENTS.find((event) => event === plan.end)
-  if (end && plan.endMs !== null) add(end, plan.endMs, end === 'ventilator_off' ? null : (plan.lastDay?.decision?.supportAfter ?? 'oxygen'))
+  if (end && plan.endMs !== null)
+    add(end, plan.endMs, end === 'ventilator_off' ? null : (plan.lastDay?.decision?.supportAfter ?? 'oxygen'))
 }
 
 type Progress = { progress: number; illness: number; readyFrom: number; isLast: boolean }
@@ -59,7 +75,8 @@ type Progress = { progress: number; illness: number; readyFrom: number; isLast: 
 function severityOn({ random }: World, plan: EpisodePlan, { progress, illness, readyFrom, isLast }: Progress): number {
   if (plan.end === 'died' || plan.isComfort) return Math.min(1, 0.5 + 0.45 * progress + random.between(-0.05, 0.1))
   if (isLast && plan.lastDay) return random.between(0.03, 0.24)
-  if (progress < readyFrom || random.chance(0.15)) return Math.max(0.35, illness * (1 - progress) + 0.35 * progress + random.normal(0, 0.05))
+  if (progress < readyFrom || random.chance(0.15))
+    return Math.max(0.35, illness * (1 - progress) + 0.35 * progress + random.normal(0, 0.05))
   return random.between(0.05, 0.28)
 }
 
@@ -71,7 +88,9 @@ function scriptOf(world: World, course: Course, plan: EpisodePlan, index: number
   const script = severity >= 0.3 ? planIllDay(world, plan, index) : planSetback(world, index)
   const { screen } = script
   // Intubated during the morning: screened soon after, and nothing more that day.
-  return screen && screen.atMs <= plan.startMs ? { screen: { ...screen, atMs: plan.startMs + random.whole(15, 50) * MINUTE_MS } } : script
+  return screen && screen.atMs <= plan.startMs
+    ? { screen: { ...screen, atMs: plan.startMs + random.whole(15, 50) * MINUTE_MS } }
+    : script
 }
 
 function planIllDay(world: World, plan: EpisodePlan, index: number): DayScript {
@@ -97,11 +116,21 @@ function withinEpisode(script: DayScript, plan: EpisodePlan, nowMs: number): Day
   return kept
 }
 
-function writeReadings(world: World, course: Course, plan: EpisodePlan, index: number, vitals: Vitals, settingsPerDay: number): void {
+function writeReadings(
+  world: World,
+  course: Course,
+  plan: EpisodePlan,
+  index: number,
+  vitals: Vitals,
+  settingsPerDay: number,
+): void {
   const { random, calendar, nowMs } = world
   const times = settingsPerDay >= 3 ? [360, 840, 1290] : [390, 1140]
   const isFirst = index === calendar.indexOf(plan.startMs)
-  const moments = [...(isFirst ? [plan.startMs + 12 * MINUTE_MS] : []), ...times.map((minutes) => calendar.at(index, minutes + random.whole(-25, 25)))]
+  const moments = [
+    ...(isFirst ? [plan.startMs + 12 * MINUTE_MS] : []),
+    ...times.map((minutes) => calendar.at(index, minutes + random.whole(-25, 25))),
+  ]
   const endMs = Math.min(plan.endMs ?? nowMs, nowMs)
   for (const atMs of moments) if (atMs > plan.startMs && atMs < endMs) writeSettings(world, course, atMs, vitals)
   const gasMs = calendar.at(index, random.whole(300, 420))

@@ -19,23 +19,43 @@ export function writeTrial(world: World, course: Course, vitals: Vitals, script:
   const { random, rows } = world
   const baseline = observedReadings(random, vitals, 0)
   const trial = {
-    ...entry(world, course, script.startMs, 'rt'), ...random.pick(TECHNIQUES), fio2Fraction: vitals.fio2Fraction, plannedDurationMin: script.plannedMin,
-    baseline, startedAnywayBecause: null,
+    ...entry(world, course, script.startMs, 'rt'),
+    ...random.pick(TECHNIQUES),
+    fio2Fraction: vitals.fio2Fraction,
+    plannedDurationMin: script.plannedMin,
+    baseline,
+    startedAnywayBecause: null,
   }
   rows.trials.push(trial)
   const looks = script.looks.map(({ minute, strain, isDistressed }) => {
     const atMs = script.startMs + minute * MINUTE_MS
-    const signs = isDistressed ? (['accessory_muscles', 'sweating'] as const) : strain > 0.7 ? (['accessory_muscles'] as const) : []
+    const signs = isDistressed
+      ? (['accessory_muscles', 'sweating'] as const)
+      : strain > 0.7
+        ? (['accessory_muscles'] as const)
+        : []
     const readings = observedReadings(random, vitals, strain, [...signs])
-    rows.trialObservations.push({ ...entry(world, course, atMs, random.chance(0.9) ? 'rt' : 'nurse'), trialId: trial.entryId, readings })
+    rows.trialObservations.push({
+      ...entry(world, course, atMs, random.chance(0.9) ? 'rt' : 'nurse'),
+      trialId: trial.entryId,
+      readings,
+    })
     return { atMs, readings }
   })
   if (script.endMs === null || script.outcome === null) return
   const { content } = protocolAt(unitAt(course.stays, script.startMs), script.startMs)
   rows.trialEnds.push({
-    ...entry(world, course, script.endMs, 'rt'), trialId: trial.entryId, outcome: script.outcome,
+    ...entry(world, course, script.endMs, 'rt'),
+    trialId: trial.entryId,
+    outcome: script.outcome,
     rulesMet: rulesMet(judgeStop(content.trial.stopRules, baseline, looks, script.endMs)).ids,
-    returnedTo: script.outcome === 'passed' ? 'Left on the settings of the trial' : `Back to PC-CSV, pressure support ${random.whole(10, 14)}, PEEP ${vitals.peepCmH2O} cmH2O`,
-    reason: script.outcome === 'stopped' ? random.pick(['Called to imaging.', 'Bedside procedure brought forward.', 'Family meeting at the bedside.']) : null,
+    returnedTo:
+      script.outcome === 'passed'
+        ? 'Left on the settings of the trial'
+        : `Back to PC-CSV, pressure support ${random.whole(10, 14)}, PEEP ${vitals.peepCmH2O} cmH2O`,
+    reason:
+      script.outcome === 'stopped'
+        ? random.pick(['Called to imaging.', 'Bedside procedure brought forward.', 'Family meeting at the bedside.'])
+        : null,
   })
 }

@@ -28,7 +28,9 @@ const membershipSchema = z.object({
 const membershipsSchema = z
   .array(membershipSchema)
   .max(200, 'At most 200 roles.')
-  .transform((given) => given.filter((one, at) => at === given.findIndex((other) => other.unitId === one.unitId && other.role === one.role)))
+  .transform((given) =>
+    given.filter((one, at) => at === given.findIndex((other) => other.unitId === one.unitId && other.role === one.role)),
+  )
 
 const rightsShape = {
   isAdministrator: z.boolean({ error: 'Say whether this person is an administrator.' }),

@@ -24,7 +24,10 @@ export const endSessionsSchema = z.object({})
 
 export const changePasswordSchema = z
   .object({ currentPassword: passwordSchema, newPassword: newPasswordSchema })
-  .refine((input) => input.currentPassword !== input.newPassword, { error: 'Choose a password that differs from the present one.', path: ['newPassword'] })
+  .refine((input) => input.currentPassword !== input.newPassword, {
+    error: 'Choose a password that differs from the present one.',
+    path: ['newPassword'],
+  })
 export type ChangePasswordInput = z.output<typeof changePasswordSchema>
 
 /** A path of our own to come back to; anything that could lead to another site is dropped. */

@@ -31,7 +31,10 @@ const placeShape = {
 export const bedLabelsSchema = z
   .array(labelSchema)
   .max(100, 'At most 100 beds at once.')
-  .refine((labels) => new Set(labels.map((label) => label.toLowerCase())).size === labels.length, 'Each bed needs a label of its own.')
+  .refine(
+    (labels) => new Set(labels.map((label) => label.toLowerCase())).size === labels.length,
+    'Each bed needs a label of its own.',
+  )
 
 export const createUnitSchema = z.object({ ...placeShape, bedLabels: bedLabelsSchema })
 export type CreateUnitInput = z.output<typeof createUnitSchema>

@@ -37,5 +37,8 @@ export function clearAllowance(db: Db, key: string): void {
 /** Too many tries, with the wait in whole minutes. */
 export function tooManyTries(waitMs: number): AppError {
   const minutes = Math.max(1, Math.ceil(waitMs / MINUTE_MS))
-  return new AppError('RATE_LIMITED', `Too many tries. Please wait ${minutes} ${minutes === 1 ? 'minute' : 'minutes'}, then try again.`)
+  return new AppError(
+    'RATE_LIMITED',
+    `Too many tries. Please wait ${minutes} ${minutes === 1 ? 'minute' : 'minutes'}, then try again.`,
+  )
 }

@@ -1,4 +1,5 @@
 import 'server-only'
+import { APIError } from 'better-auth/api'
 import { z } from 'zod'
 import { findUserByEmail, deleteSession } from '@/db/queries/sessions'
 import { AppError, invalidField } from '@/lib/shared/errors'
@@ -68,7 +69,10 @@ async function signIn(request: Request): Promise<Response> {
   const personId = findUserByEmail(db, email)?.id
   const subject = personId ? { kind: 'person', id: personId } : { kind: 'email_hash', id: hashEmail(email, secret) }
   db.transaction((tx) => writeAudit(tx, ctx, { action: 'session.sign_in_failed', subject }), { behavior: 'immediate' })
-  throw invalidField('password', 'E-mail address and password do not match an account here. Check both, or set a new password by mail.')
+  throw invalidField(
+    'password',
+    'E-mail address and password do not match an account here. Check both, or set a new password by mail.',
+  )
 }
 
 async function signOut(request: Request): Promise<Response> {
@@ -127,7 +131,12 @@ async function callLibrary(request: Request, path: string, body: unknown): Promi
   headers.delete('content-length')
   headers.set('content-type', 'application/json')
   const url = new URL(`/api/auth${path}`, readEnv().baseUrl)
-  return sharedAuth().handler(new Request(url, { method: 'POST', headers, body: JSON.stringify(body) }))
+  try {
+    return await sharedAuth().handler(new Request(url, { method: 'POST', headers, body: JSON.stringify(body) }))
+  } catch (error) {
+    if (error instanceof APIError) return new Response(null, { status: error.statusCode })
+    throw error
+  }
 }
 
 /** The library's cookies without its body: the session token stays out of reach of scripts. */
@@ -139,6 +148,6 @@ function withCookiesOf(answer: Response): Response {
 
 async function readJson<Schema extends z.ZodType>(request: Request, schema: Schema): Promise<z.output<Schema>> {
   const parsed = schema.safeParse(await readJsonBody(request, LONGEST_BODY_BYTES))
-  if (parsed.success) return parsed.data
-  throw new AppError('INVALID', 'The request was not readable.')
+  if (!parsed.success) throw new AppError('INVALID', 'The request was not readable.')
+  return parsed.data
 }

@@ -29,10 +29,31 @@ const ALL_TOGETHER = { window: 60, max: 240 }
 
 // Everything that the library offers beyond the four paths that auth-route.ts lets through.
 const DISABLED_PATHS = [
-  '/sign-up/email', '/sign-in/social', '/get-session', '/list-sessions', '/revoke-session', '/revoke-sessions', '/revoke-other-sessions',
-  '/update-user', '/update-session', '/change-email', '/change-password', '/set-password', '/verify-password', '/delete-user',
-  '/delete-user/callback', '/verify-email', '/send-verification-email', '/link-social', '/unlink-account', '/list-accounts',
-  '/refresh-token', '/get-access-token', '/account-info', '/ok', '/error',
+  '/sign-up/email',
+  '/sign-in/social',
+  '/get-session',
+  '/list-sessions',
+  '/revoke-session',
+  '/revoke-sessions',
+  '/revoke-other-sessions',
+  '/update-user',
+  '/update-session',
+  '/change-email',
+  '/change-password',
+  '/set-password',
+  '/verify-password',
+  '/delete-user',
+  '/delete-user/callback',
+  '/verify-email',
+  '/send-verification-email',
+  '/link-social',
+  '/unlink-account',
+  '/list-accounts',
+  '/refresh-token',
+  '/get-access-token',
+  '/account-info',
+  '/ok',
+  '/error',
 ]
 
 /** A context for what the sign-in itself writes. */
@@ -75,7 +96,12 @@ export function createAuth(db: Db, env: Pick<Env, 'baseUrl' | 'secret' | 'truste
         },
       },
     },
-    rateLimit: { enabled: true, ...PER_ADDRESS, customRules: { '/**': PER_ADDRESS }, customStorage: { consume: async (key) => limitAddress(db, key) } },
+    rateLimit: {
+      enabled: true,
+      ...PER_ADDRESS,
+      customRules: { '/**': PER_ADDRESS },
+      customStorage: { consume: async (key) => limitAddress(db, key) },
+    },
     advanced: {
       cookiePrefix: COOKIE_PREFIX,
       useSecureCookies: env.baseUrl.startsWith('https://'),
@@ -84,6 +110,8 @@ export function createAuth(db: Db, env: Pick<Env, 'baseUrl' | 'secret' | 'truste
       // Without a proxy of our own any address header is the client's invention, so none is believed.
       ipAddress: { ipAddressHeaders: env.trustedProxyHeader ? [env.trustedProxyHeader] : [] },
     },
+    // Faults come out as they are, so that our own log takes them; the library would print them as a whole.
+    onAPIError: { throw: true },
     logger: { level: 'error', log: (level, message) => log.error({ source: 'sign-in', level }, message) },
   })
 }

@@ -35,15 +35,15 @@ export function handle<Schema extends z.ZodType, Answer>(options: HandleOptions<
       const answer = await options.run(ctx, input)
       return options.respond ? noStore(options.respond(answer)) : noStore(Response.json(answer ?? null))
     } catch (error) {
-      if (ctx) recordRefusal(ctx, request, error)
-      return noStore(toErrorResponse(error, requestId))
+      return noStore(toErrorResponse(ctx ? recordRefusal(ctx, request, error) : error, requestId))
     }
   }
 }
 
 function readIdempotencyKey(request: Request): string | null {
   const key = request.method === 'GET' ? null : request.headers.get('idempotency-key')
-  if (key !== null && (key === '' || key.length > LONGEST_KEY)) throw new AppError('INVALID', 'The request was not readable. Nothing was recorded.')
+  if (key !== null && (key === '' || key.length > LONGEST_KEY))
+    throw new AppError('INVALID', 'The request was not readable. Nothing was recorded.')
   return key
 }
 
@@ -56,11 +56,14 @@ async function findActor(request: Request, session: 'open' | 'even_locked' | 'no
 export function refuseForeignOrigin(request: Request): void {
   if (request.method === 'GET' || request.method === 'HEAD') return
   const origin = request.headers.get('origin')
-  if (origin !== new URL(readEnv().baseUrl).origin) throw new AppError('FORBIDDEN', 'This request did not come from a Daybreath page.')
+  if (origin !== new URL(readEnv().baseUrl).origin)
+    throw new AppError('FORBIDDEN', 'This request did not come from a Daybreath page.')
 }
 
 async function parseInput<Schema extends z.ZodType>(
-  schema: Schema, request: Request, params: Record<string, string | string[] | undefined>,
+  schema: Schema,
+  request: Request,
+  params: Record<string, string | string[] | undefined>,
 ): Promise<z.output<Schema>> {
   const given = request.method === 'GET' ? Object.fromEntries(new URL(request.url).searchParams) : await readBody(request)
   // What the address names wins over what the body or query claims.
@@ -80,24 +83,43 @@ async function readBody(request: Request): Promise<Record<string, unknown>> {
   throw new AppError('INVALID', 'The request was not readable. Nothing was recorded.')
 }
 
-/** A refusal by the verb itself (not its author, not in this episode) is written down here, since what the verb began was undone. */
-function recordRefusal(ctx: Ctx, request: Request, error: unknown): void {
-  if (ctx.actor.kind !== 'person' || !(error instanceof AppError) || error instanceof AuditedRefusal) return
+/**
+ * A refusal by the verb itself (not its author, not in this episode) is written down here, since what the verb began was undone. Answers the
+ * refusal, or the fault when it could not be written down.
+ */
+function recordRefusal(ctx: Ctx, request: Request, error: unknown): unknown {
+  if (ctx.actor.kind !== 'person' || !(error instanceof AppError) || error instanceof AuditedRefusal) return error
   const { code } = error
-  if (code !== 'FORBIDDEN' && code !== 'NOT_FOUND') return
+  if (code !== 'FORBIDDEN' && code !== 'NOT_FOUND') return error
   const asked = `${request.method} ${new URL(request.url).pathname}`.slice(0, 200)
-  ctx.db.transaction((tx) => writeAudit(tx, ctx, { action: 'access.denied', after: { asked, code } }), { behavior: 'immediate' })
+  try {
+    ctx.db.transaction((tx) => writeAudit(tx, ctx, { action: 'access.denied', after: { asked, code } }), {
+      behavior: 'immediate',
+    })
+    return error
+  } catch (fault) {
+    return fault
+  }
 }
 
 /** The one place that turns an error into HTTP. Foreign errors never show their text. */
 export function toErrorResponse(error: unknown, requestId: string): Response {
   if (error instanceof AppError) {
-    const dto: ErrorDto = { code: error.code, message: error.message, requestId, ...(error.fields ? { fields: error.fields } : {}) }
+    const dto: ErrorDto = {
+      code: error.code,
+      message: error.message,
+      requestId,
+      ...(error.fields ? { fields: error.fields } : {}),
+    }
     if (error.code === 'FORBIDDEN' || error.code === 'RATE_LIMITED') log.warn({ requestId, code: error.code }, 'refused')
     return Response.json(dto, { status: ERROR_STATUS[error.code] })
   }
   log.error({ requestId, err: error instanceof Error ? { name: error.name, stack: error.stack } : 'unknown' }, 'fault')
-  const dto: ErrorDto = { code: 'INTERNAL', message: `Something went wrong on the server, and nothing was recorded. Reference ${requestId}.`, requestId }
+  const dto: ErrorDto = {
+    code: 'INTERNAL',
+    message: `Something went wrong on the server, and nothing was recorded. Reference ${requestId}.`,
+    requestId,
+  }
   return Response.json(dto, { status: 500 })
 }
 

@@ -20,7 +20,10 @@ export function once<Answer>(ctx: Ctx, action: string, input: unknown, change: (
       const earlier = findIdempotencyKey(tx, key)
       if (earlier) {
         if (earlier.action !== action || earlier.inputHash !== inputHash) {
-          throw new AppError('CONFLICT', 'This form was already sent with other values. Reload the page to see what was recorded.')
+          throw new AppError(
+            'CONFLICT',
+            'This form was already sent with other values. Reload the page to see what was recorded.',
+          )
         }
         return earlier.answer as Answer
       }

@@ -30,8 +30,13 @@ export function findStanding(db: Db, cookieHeader: string | null, now: number): 
   if (!found || found.deactivatedAt !== null) return null
   if (found.expiresAt.getTime() <= now || found.createdAt.getTime() + SESSION_LENGTH_MS <= now) return null
   const actor: PersonActor = {
-    kind: 'person', personId: found.personId, sessionId: found.sessionId, hospitalId: found.hospitalId, name: found.name,
-    isAdministrator: found.isAdministrator, memberships: listMembershipsPrepared(db, found.personId),
+    kind: 'person',
+    personId: found.personId,
+    sessionId: found.sessionId,
+    hospitalId: found.hospitalId,
+    name: found.name,
+    isAdministrator: found.isAdministrator,
+    memberships: listMembershipsPrepared(db, found.personId),
   }
   const isIdle = now - found.lastActiveAt > found.idleLockMin * MINUTE_MS
   return { actor, isLocked: found.lockedAt !== null || isIdle, lastActiveAt: found.lastActiveAt }
@@ -41,7 +46,10 @@ export function findStanding(db: Db, cookieHeader: string | null, now: number): 
 function readSignedToken(cookieHeader: string | null): string | null {
   const { baseUrl, secret } = readEnv()
   const start = `${sessionCookieName(baseUrl)}=`
-  const pair = cookieHeader?.split(';').map((part) => part.trim()).find((part) => part.startsWith(start))
+  const pair = cookieHeader
+    ?.split(';')
+    .map((part) => part.trim())
+    .find((part) => part.startsWith(start))
   if (!pair) return null
   const value = decodeOrNull(pair.slice(start.length))
   const dot = value?.lastIndexOf('.') ?? -1

@@ -16,18 +16,22 @@ beforeAll(async () => {
 })
 
 const name = (row: { route: string; method: string }) => `${row.method} ${row.route}`
-const isOfSession = (row: Row) => !row.route.startsWith('/api/auth/') && row.route !== '/api/health' && row.route !== '/api/session/accept'
+const isOfSession = (row: Row) =>
+  !row.route.startsWith('/api/auth/') && row.route !== '/api/health' && row.route !== '/api/session/accept'
 
 async function call(row: Row, who: Cast, scene: Scene): Promise<{ status: number; text: string; headers: Headers }> {
   serveDatabase(scene.db)
   const { params = {}, body, search = '' } = row.prepare(scene)
-  const path = row.route.replace('[...all]', 'update-user').replaceAll(/\[(\w+)\]/g, (_, param: string) => params[param] ?? 'missing')
+  const path = row.route
+    .replace('[...all]', 'update-user')
+    .replaceAll(/\[(\w+)\]/g, (_, param: string) => params[param] ?? 'missing')
   const handler = routes.get(row.route)?.[row.method]
   if (!handler) throw new Error(`${name(row)} is not there.`)
   const before = dumpRows(scene.db, ['audit_log'])
   const response = await handler(requestBy(scene, path, { who, method: row.method, body, search }), routeParams(params))
   const text = await response.text()
-  if (response.status >= 400) expect(dumpRows(scene.db, ['audit_log']), `${who} changed something by a refused ${name(row)}`).toEqual(before)
+  if (response.status >= 400)
+    expect(dumpRows(scene.db, ['audit_log']), `${who} changed something by a refused ${name(row)}`).toEqual(before)
   return { status: response.status, text, headers: response.headers }
 }
 
@@ -35,7 +39,9 @@ const denials = (scene: Scene) => scene.db.select().from(auditLog).where(eq(audi
 
 describe('the table of routes', () => {
   it('holds every route and method there is, each once, and none that is gone', () => {
-    const there = [...routes].flatMap(([route, handlers]) => METHODS.filter((method) => method in handlers).map((method) => `${method} ${route}`))
+    const there = [...routes].flatMap(([route, handlers]) =>
+      METHODS.filter((method) => method in handlers).map((method) => `${method} ${route}`),
+    )
     expect(there.length).toBeGreaterThan(40)
     expect(ACCESS_TABLE.map(name).sort()).toEqual(there.sort())
   })
@@ -63,7 +69,10 @@ describe.each(ACCESS_TABLE.map((row) => [name(row), row] as const))('%s', (_name
     expect(status, text).toBe(expected)
     expect(headers.get('cache-control')).toBe('no-store')
     if (!IN_UNIT.includes(who) || status !== 200) {
-      expect(PATIENT_WORDS.filter((word) => text.toLowerCase().includes(word.toLowerCase())), `patient data for ${who}`).toEqual([])
+      expect(
+        PATIENT_WORDS.filter((word) => text.toLowerCase().includes(word.toLowerCase())),
+        `patient data for ${who}`,
+      ).toEqual([])
     }
     const denied = denials(scene)
     if (who === 'nobody' || who === 'deactivated' || !isOfSession(row) || (status !== 403 && status !== 404)) {
@@ -78,11 +87,17 @@ describe.each(ACCESS_TABLE.map((row) => [name(row), row] as const))('%s', (_name
 
 describe('what the table is worth', () => {
   it('finds the patient in the answers to those who work there, so that a leak would be seen', async () => {
-    const naming = ['/api/units/[unitId]/today', '/api/units/[unitId]/patients', '/api/patients/[patientId]', '/api/episodes/[episodeId]/decisions']
+    const naming = [
+      '/api/units/[unitId]/today',
+      '/api/units/[unitId]/patients',
+      '/api/patients/[patientId]',
+      '/api/episodes/[episodeId]/decisions',
+    ]
     for (const route of naming) {
       const row = ACCESS_TABLE.find((one) => one.route === route && one.method === 'GET')
       if (!row) throw new Error(`${route} is not in the table.`)
-      for (const who of IN_UNIT) expect((await call(row, who, freshScene())).text, `${route} for ${who}`).toContain(PATIENT_WORDS[0])
+      for (const who of IN_UNIT)
+        expect((await call(row, who, freshScene())).text, `${route} for ${who}`).toContain(PATIENT_WORDS[0])
     }
   })
 
@@ -100,7 +115,11 @@ describe('what the table is worth', () => {
     for (const row of ACCESS_TABLE.filter(isOfSession)) {
       const scene = freshScene()
       scene.db.$client.prepare('update session_states set locked_at = ?').run(Date.now())
-      const locked = await call(row, row.expected.physician === 200 ? 'physician' : row.expected.unitLead === 200 ? 'unitLead' : 'administrator', scene)
+      const locked = await call(
+        row,
+        row.expected.physician === 200 ? 'physician' : row.expected.unitLead === 200 ? 'unitLead' : 'administrator',
+        scene,
+      )
       expect(locked.status, name(row)).toBe(evenLocked.includes(name(row)) ? 200 : 423)
       const signedOut = freshScene()
       signedOut.db.delete(session).run()
@@ -112,7 +131,9 @@ describe('what the table is worth', () => {
 describe('what sign-in opens', () => {
   const open = ['sign-in/email', 'sign-out', 'request-password-reset', 'reset-password']
   const bodies: Record<string, unknown> = {
-    'sign-in/email': { email: 'nobody@example.invalid', password: PASSWORD }, 'sign-out': {}, 'request-password-reset': { email: 'nobody@example.invalid' },
+    'sign-in/email': { email: 'nobody@example.invalid', password: PASSWORD },
+    'sign-out': {},
+    'request-password-reset': { email: 'nobody@example.invalid' },
     'reset-password': { token: 'x'.repeat(24), newPassword: 'another long sentence' },
   }
 
@@ -121,13 +142,21 @@ describe('what sign-in opens', () => {
     const scene = freshScene()
     serveDatabase(scene.db)
     const library = createAuth(scene.db, { baseUrl: 'http://daybreath.test', secret: 'x'.repeat(40), trustedProxyHeader: null })
-    const paths = Object.values(library.api).map((endpoint) => (endpoint as { path?: string }).path ?? '').filter((path) => path.startsWith('/'))
+    const paths = Object.values(library.api)
+      .map((endpoint) => (endpoint as { path?: string }).path ?? '')
+      .filter((path) => path.startsWith('/'))
     expect(paths).toEqual(expect.arrayContaining(['/sign-up/email', '/update-user', '/sign-in/email']))
     const POST = routes.get('/api/auth/[...all]')?.POST
     const GET = routes.get('/api/auth/[...all]')?.GET
     if (!POST || !GET) throw new Error('The route of the sign-in is not there.')
     const answered = []
-    for (const path of new Set([...paths.map((one) => one.slice(1).replaceAll(/:\w+/g, 'x')), ...open, 'constructor', 'sign-in/email/', 'SIGN-OUT'])) {
+    for (const path of new Set([
+      ...paths.map((one) => one.slice(1).replaceAll(/:\w+/g, 'x')),
+      ...open,
+      'constructor',
+      'sign-in/email/',
+      'SIGN-OUT',
+    ])) {
       const asked = `/api/auth/${path}`
       const post = await POST(requestBy(scene, asked, { who: 'rt', body: bodies[path] ?? {} }), routeParams())
       const get = await GET(requestBy(scene, asked, { who: 'rt', method: 'GET' }), routeParams())
@@ -164,7 +193,10 @@ describe('pages', () => {
   it('open to everybody read nothing of a unit', () => {
     for (const file of filesBelow('app/(auth)', /\.tsx$/)) {
       const services = [...readFileSync(file, 'utf8').matchAll(/from '@\/lib\/services\/([^']+)'/g)].map(([, path]) => path)
-      expect(services.filter((path) => !['people/read-link', 'session/read-sign-in-page'].includes(path ?? '')), file).toEqual([])
+      expect(
+        services.filter((path) => !['people/read-link', 'session/read-sign-in-page'].includes(path ?? '')),
+        file,
+      ).toEqual([])
     }
   })
 })

@@ -9,7 +9,16 @@ import { newId } from '@/lib/shared/ids'
 import { HOUR_MS, MINUTE_MS } from '@/lib/shared/time'
 import { CLINICAL_ROLES, type ClinicalRole } from '@/lib/weaning/vocabulary'
 import { openTestDatabase } from '../helpers/database'
-import { makeAdmitted, makeCtx, makeHospital, makePatient, makePerson, makeStay, makeUnit, type TestPerson } from '../helpers/factories'
+import {
+  makeAdmitted,
+  makeCtx,
+  makeHospital,
+  makePatient,
+  makePerson,
+  makeStay,
+  makeUnit,
+  type TestPerson,
+} from '../helpers/factories'
 import { makeSession, TEST_BASE_URL } from '../helpers/test-server'
 import { at } from '../helpers/verb-checks'
 
@@ -18,7 +27,16 @@ export const PASSWORD = 'a long enough sentence'
 export const PATIENT_WORDS = ['Quillifer', 'Zebedee', 'ZQ-771904', 'Yarrowby', 'Xanthe', 'ZQ-662813'] as const
 
 export const CAST = [
-  'nobody', 'rt', 'nurse', 'physician', 'unitLead', 'otherUnitRt', 'otherUnitAll', 'administrator', 'deactivated', 'otherHospital',
+  'nobody',
+  'rt',
+  'nurse',
+  'physician',
+  'unitLead',
+  'otherUnitRt',
+  'otherUnitAll',
+  'administrator',
+  'deactivated',
+  'otherHospital',
 ] as const
 export type Cast = (typeof CAST)[number]
 /** Those who work in the unit and may see its patients. */
@@ -67,27 +85,65 @@ export async function makeScene() {
   const place = { protocolVersionId: here.protocolVersion.id, by: people.rt.id }
   const startedAt = now - 48 * HOUR_MS
   const stay = { startedAt: now - 60 * HOUR_MS }
-  const ventilated = makeAdmitted(db, { unit: here.unit, bed, ...place }, {
-    patient: { familyName: PATIENT_WORDS[0], givenName: PATIENT_WORDS[1], recordNumber: PATIENT_WORDS[2] }, stay, episode: { startedAt },
-  })
+  const ventilated = makeAdmitted(
+    db,
+    { unit: here.unit, bed, ...place },
+    {
+      patient: { familyName: PATIENT_WORDS[0], givenName: PATIENT_WORDS[1], recordNumber: PATIENT_WORDS[2] },
+      stay,
+      episode: { startedAt },
+    },
+  )
   const breathing = makePatient(db, hospital.id, people.rt.id, {
-    familyName: PATIENT_WORDS[3], givenName: PATIENT_WORDS[4], recordNumber: PATIENT_WORDS[5],
+    familyName: PATIENT_WORDS[3],
+    givenName: PATIENT_WORDS[4],
+    recordNumber: PATIENT_WORDS[5],
   })
   const breathingStay = makeStay(db, { patientId: breathing.id, unitId: here.unit.id, bedId: secondBed.id, ...stay })
   const [thereBed] = there.beds
   if (!thereBed) throw new Error('The unit has no bed.')
   const elsewhere = makeAdmitted(
-    db, { unit: there.unit, bed: thereBed, protocolVersionId: there.protocolVersion.id, by: people.otherUnitRt.id }, { stay, episode: { startedAt } },
+    db,
+    { unit: there.unit, bed: thereBed, protocolVersionId: there.protocolVersion.id, by: people.otherUnitRt.id },
+    { stay, episode: { startedAt } },
   )
   db.insert(schema.mailSchedules).values({ unitId: here.unit.id, morningDueMin: 300 }).run()
   const mailId = newId()
-  db.insert(schema.mailLedger).values({
-    id: mailId, onceKey: 'scene', unitId: here.unit.id, kind: 'morning_due', day: '2026-03-03', recipient: 'rt@example.invalid', subject: 'Screens due',
-    bodyText: 'Bed M01', bodyHtml: '<p>Bed M01</p>', messageId: '<scene@daybreath.test>', state: 'failed', queuedAt: now, nextAttemptAt: now,
-  }).run()
+  db.insert(schema.mailLedger)
+    .values({
+      id: mailId,
+      onceKey: 'scene',
+      unitId: here.unit.id,
+      kind: 'morning_due',
+      day: '2026-03-03',
+      recipient: 'rt@example.invalid',
+      subject: 'Screens due',
+      bodyText: 'Bed M01',
+      bodyHtml: '<p>Bed M01</p>',
+      messageId: '<scene@daybreath.test>',
+      state: 'failed',
+      queuedAt: now,
+      nextAttemptAt: now,
+    })
+    .run()
   return {
-    db, people, cookies: cookies as Record<Cast, string | undefined>, hospital, here, there, far, secondLead, invited, mailId, elsewhere,
-    patient: ventilated.patient, stay: ventilated.stay, episode: ventilated.episode, breathing, breathingStay, bedsHere,
+    db,
+    people,
+    cookies: cookies as Record<Cast, string | undefined>,
+    hospital,
+    here,
+    there,
+    far,
+    secondLead,
+    invited,
+    mailId,
+    elsewhere,
+    patient: ventilated.patient,
+    stay: ventilated.stay,
+    episode: ventilated.episode,
+    breathing,
+    breathingStay,
+    bedsHere,
   }
 }
 export type Scene = Awaited<ReturnType<typeof makeScene>>
@@ -107,7 +163,15 @@ export function freezeScene(scene: Scene): () => Scene {
 /** What a verb takes first, for one of the cast, now. */
 export const castCtx = (scene: Scene, who: Exclude<Cast, 'nobody'>) => makeCtx(scene.db, scene.people[who], Date.now())
 
-type Sent = { who?: Cast; method?: string; body?: unknown; rawBody?: BodyInit; headers?: Record<string, string | null>; cookie?: string; search?: string }
+type Sent = {
+  who?: Cast
+  method?: string
+  body?: unknown
+  rawBody?: BodyInit
+  headers?: Record<string, string | null>
+  cookie?: string
+  search?: string
+}
 
 /** A request by one of the cast, as our own pages send it unless told otherwise; a header given as null is left out. */
 export function requestBy(scene: Scene, path: string, sent: Sent = {}): Request {
@@ -120,6 +184,8 @@ export function requestBy(scene: Scene, path: string, sent: Sent = {}): Request 
   }
   const kept = Object.entries(all).filter((pair): pair is [string, string] => pair[1] !== null)
   return new Request(new URL(`${path}${search}`, TEST_BASE_URL), {
-    method, headers: kept, ...(isWrite ? { body: rawBody ?? JSON.stringify(body ?? {}) } : {}),
+    method,
+    headers: kept,
+    ...(isWrite ? { body: rawBody ?? JSON.stringify(body ?? {}) } : {}),
   })
 }

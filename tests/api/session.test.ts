@@ -1,5 +1,5 @@
 import { eq } from 'drizzle-orm'
-import { beforeEach, describe, expect, it } from 'vitest'
+import { beforeEach, describe, expect, it, vi } from 'vitest'
 import type { Db } from '@/db/client'
 import { savePasswordHash } from '@/db/queries/sessions'
 import { auditLog, hospitals, idempotencyKeys, memberships, people, session, sessionStates } from '@/db/schema'
@@ -20,6 +20,9 @@ import { makeRequest, makeSession, routeParams, serveDatabase } from '../helpers
 
 const PASSWORD = 'a long enough sentence'
 
+// Each real password check costs 0.2 s, more on a busy machine.
+vi.setConfig({ testTimeout: 60_000 })
+
 let db: Db
 let rowan: TestPerson
 let hash: string | undefined
@@ -34,7 +37,8 @@ beforeEach(async () => {
 
 const audited = (action: string) => db.select().from(auditLog).where(eq(auditLog.action, action)).all()
 const codeOf = async (response: Response) => ((await response.json()) as { code?: string }).code ?? 'OK'
-const send = (route: typeof lock, cookie: string, body: unknown = {}) => route(makeRequest('/api/x', { cookie, body }), routeParams())
+const send = (route: typeof lock, cookie: string, body: unknown = {}) =>
+  route(makeRequest('/api/x', { cookie, body }), routeParams())
 const fetchPeople = (cookie?: string, headers: Record<string, string> = {}) =>
   listPeople(makeRequest('/api/admin/people', { method: 'GET', ...(cookie ? { cookie } : {}), headers }), routeParams())
 
@@ -44,7 +48,14 @@ describe('the session check', () => {
     const token = decodeURIComponent(cookie.split('=')[1] ?? '').split('.')[0] ?? ''
     const forged = `daybreath.session_token=${encodeURIComponent(`${token}.${Buffer.alloc(32).toString('base64')}`)}`
     const wrongName = cookie.replace('daybreath.session_token', 'other.session_token')
-    for (const bad of [undefined, forged, wrongName, 'daybreath.session_token=%E0%A4%A', 'daybreath.session_token=', `daybreath.session_token=${token}`]) {
+    for (const bad of [
+      undefined,
+      forged,
+      wrongName,
+      'daybreath.session_token=%E0%A4%A',
+      'daybreath.session_token=',
+      `daybreath.session_token=${token}`,
+    ]) {
       expect(await codeOf(await fetchPeople(bad)), String(bad)).toBe('UNAUTHENTICATED')
     }
     expect((await fetchPeople(cookie)).status).toBe(200)
@@ -100,14 +111,17 @@ describe('the idle lock', () => {
     const { cookie } = makeSession(db, rowan.id, { lockedAt: Date.now() })
     expect((await fetchPeople(cookie)).status).toBe(423)
     expect((await send(endAll, cookie)).status).toBe(423)
-    expect((await send(changePassword, cookie, { currentPassword: PASSWORD, newPassword: 'another long sentence' })).status).toBe(423)
+    expect((await send(changePassword, cookie, { currentPassword: PASSWORD, newPassword: 'another long sentence' })).status).toBe(
+      423,
+    )
     const me = await readMe(makeRequest('/api/me', { method: 'GET', cookie }), routeParams())
     expect(await me.json()).toMatchObject({ name: rowan.name, isLocked: true, idleLockMin: 15 })
   })
 
   it('counts a request as activity only when a person caused it, and writes it at most every 30 s', async () => {
     const { cookie, sessionId } = makeSession(db, rowan.id, { lastActiveAt: Date.now() - 5 * MINUTE_MS })
-    const lastActiveAt = () => db.select().from(sessionStates).where(eq(sessionStates.sessionId, sessionId)).get()?.lastActiveAt ?? 0
+    const lastActiveAt = () =>
+      db.select().from(sessionStates).where(eq(sessionStates.sessionId, sessionId)).get()?.lastActiveAt ?? 0
     const before = lastActiveAt()
     await fetchPeople(cookie)
     expect(lastActiveAt()).toBe(before)
@@ -175,14 +189,23 @@ describe('lock and unlock', () => {
 
   it('does not open with the password of somebody else', async () => {
     const other = makePerson(db, rowan.hospitalId)
-    savePasswordHash(db, { id: newId(), personId: other.id, hash: await hashNewPassword('the password of another'), now: Date.now() })
+    savePasswordHash(db, {
+      id: newId(),
+      personId: other.id,
+      hash: await hashNewPassword('the password of another'),
+      now: Date.now(),
+    })
     const { cookie } = makeSession(db, rowan.id, { lockedAt: Date.now() })
     expect((await send(unlock, cookie, { password: 'the password of another' })).status).toBe(422)
   })
 
   it('refuses to unlock from a foreign page', async () => {
     const { cookie } = makeSession(db, rowan.id, { lockedAt: Date.now() })
-    const request = makeRequest('/api/session/unlock', { cookie, body: { password: PASSWORD }, headers: { origin: 'https://elsewhere.invalid' } })
+    const request = makeRequest('/api/session/unlock', {
+      cookie,
+      body: { password: PASSWORD },
+      headers: { origin: 'https://elsewhere.invalid' },
+    })
     expect((await unlock(request, routeParams())).status).toBe(403)
     expect((await fetchPeople(cookie)).status).toBe(423)
   })
@@ -196,8 +219,20 @@ describe('signing out everywhere', () => {
     const second = makeSession(db, rowan.id)
     expect(await (await send(endAll, first.cookie)).json()).toEqual({ ended: 2 })
     expect(await codeOf(await fetchPeople(second.cookie))).toBe('UNAUTHENTICATED')
-    expect(db.select().from(session).all().map((row) => row.id)).toEqual([kept.sessionId])
-    expect(db.select().from(sessionStates).all().map((row) => row.sessionId)).toEqual([kept.sessionId])
+    expect(
+      db
+        .select()
+        .from(session)
+        .all()
+        .map((row) => row.id),
+    ).toEqual([kept.sessionId])
+    expect(
+      db
+        .select()
+        .from(sessionStates)
+        .all()
+        .map((row) => row.sessionId),
+    ).toEqual([kept.sessionId])
     expect(audited('session.end_all').map((row) => row.after)).toEqual([{ ended: 2 }])
   })
 })
@@ -207,10 +242,15 @@ describe('changing the password', () => {
     const here = makeSession(db, rowan.id)
     const elsewhere = makeSession(db, rowan.id)
     const request = makeRequest('/api/me/password', {
-      cookie: here.cookie, body: { currentPassword: PASSWORD, newPassword: 'another long sentence' }, headers: { 'idempotency-key': 'k1' },
+      cookie: here.cookie,
+      body: { currentPassword: PASSWORD, newPassword: 'another long sentence' },
+      headers: { 'idempotency-key': 'k1' },
     })
     expect(await (await changePassword(request, routeParams())).json()).toEqual({ otherSessionsEnded: 1 })
-    expect([await isPasswordOf(db, rowan.id, PASSWORD), await isPasswordOf(db, rowan.id, 'another long sentence')]).toEqual([false, true])
+    expect([await isPasswordOf(db, rowan.id, PASSWORD), await isPasswordOf(db, rowan.id, 'another long sentence')]).toEqual([
+      false,
+      true,
+    ])
     expect((await fetchPeople(here.cookie)).status).toBe(200)
     expect((await fetchPeople(elsewhere.cookie)).status).toBe(401)
     expect(audited('password.change')).toHaveLength(1)
@@ -242,7 +282,9 @@ describe('the password asked for again before signing', () => {
     const now = Date.now()
     for (let tries = 0; tries < 5; tries += 1) expect(await verifyOwnPassword(makeCtx(db, rowan, now), 'wrong')).toBe(false)
     await expect(verifyOwnPassword(makeCtx(db, rowan, now + 14 * MINUTE_MS), PASSWORD)).rejects.toBeInstanceOf(AppError)
-    await expect(verifyOwnPassword(makeCtx(db, rowan, now + 14 * MINUTE_MS), PASSWORD)).rejects.toMatchObject({ code: 'RATE_LIMITED' })
+    await expect(verifyOwnPassword(makeCtx(db, rowan, now + 14 * MINUTE_MS), PASSWORD)).rejects.toMatchObject({
+      code: 'RATE_LIMITED',
+    })
     expect(await verifyOwnPassword(makeCtx(db, rowan, now + 15 * MINUTE_MS), PASSWORD)).toBe(true)
   })
 

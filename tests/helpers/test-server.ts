@@ -17,15 +17,26 @@ export function serveDatabase(db: Db): void {
 
 /** A signed-in session of a person, as its cookie header. By the real clock, since routes use it. */
 export function makeSession(
-  db: Db, personId: string, over: { createdAt?: number; lastActiveAt?: number; lockedAt?: number | null } = {},
+  db: Db,
+  personId: string,
+  over: { createdAt?: number; lastActiveAt?: number; lockedAt?: number | null } = {},
 ): { sessionId: string; cookie: string } {
   const createdAt = over.createdAt ?? Date.now()
   const sessionId = newId()
   const token = newId()
-  db.insert(session).values({
-    id: sessionId, token, userId: personId, createdAt: new Date(createdAt), updatedAt: new Date(createdAt), expiresAt: new Date(createdAt + 12 * HOUR_MS),
-  }).run()
-  db.insert(sessionStates).values({ sessionId, personId, lastActiveAt: over.lastActiveAt ?? createdAt, lockedAt: over.lockedAt ?? null }).run()
+  db.insert(session)
+    .values({
+      id: sessionId,
+      token,
+      userId: personId,
+      createdAt: new Date(createdAt),
+      updatedAt: new Date(createdAt),
+      expiresAt: new Date(createdAt + 12 * HOUR_MS),
+    })
+    .run()
+  db.insert(sessionStates)
+    .values({ sessionId, personId, lastActiveAt: over.lastActiveAt ?? createdAt, lockedAt: over.lockedAt ?? null })
+    .run()
   const signature = createHmac('sha256', TEST_SECRET).update(token).digest('base64')
   return { sessionId, cookie: `daybreath.session_token=${encodeURIComponent(`${token}.${signature}`)}` }
 }

@@ -36,9 +36,19 @@ describe('formatTime', () => {
 
 describe('formatDuration', () => {
   it.each([
-    [0, '0 min'], [59_999, '0 min'], [60_000, '1 min'], [35 * MINUTE_MS, '35 min'], [HOUR_MS - 1, '59 min'], [HOUR_MS, '1 h'],
-    [130 * MINUTE_MS, '2 h 10 min'], [24 * HOUR_MS, '24 h'], [48 * HOUR_MS - MINUTE_MS, '47 h 59 min'], [48 * HOUR_MS, '2 d 0 h'],
-    [76 * HOUR_MS, '3 d 4 h'], [-35 * MINUTE_MS, '35 min'], [-130 * MINUTE_MS, '2 h 10 min'],
+    [0, '0 min'],
+    [59_999, '0 min'],
+    [60_000, '1 min'],
+    [35 * MINUTE_MS, '35 min'],
+    [HOUR_MS - 1, '59 min'],
+    [HOUR_MS, '1 h'],
+    [130 * MINUTE_MS, '2 h 10 min'],
+    [24 * HOUR_MS, '24 h'],
+    [48 * HOUR_MS - MINUTE_MS, '47 h 59 min'],
+    [48 * HOUR_MS, '2 d 0 h'],
+    [76 * HOUR_MS, '3 d 4 h'],
+    [-35 * MINUTE_MS, '35 min'],
+    [-130 * MINUTE_MS, '2 h 10 min'],
   ])('says %d ms as %s', (ms, text) => {
     expect(formatDuration(ms)).toBe(text)
   })
@@ -52,7 +62,13 @@ describe('days, months, minutes and numbers', () => {
     expect(formatMonth('2026-01')).toBe('Jan 2026')
   })
 
-  it.each([[0, '00:00'], [5, '00:05'], [300, '05:00'], [540, '09:00'], [1439, '23:59']])('writes %d minutes after midnight as %s', (minutes, text) => {
+  it.each([
+    [0, '00:00'],
+    [5, '00:05'],
+    [300, '05:00'],
+    [540, '09:00'],
+    [1439, '23:59'],
+  ])('writes %d minutes after midnight as %s', (minutes, text) => {
     expect(formatMinutes(minutes)).toBe(text)
   })
 

@@ -12,20 +12,30 @@ const FIXED = 'Etc/GMT+7'
 const ZONES = [DENVER, BERLIN, LORD_HOWE, FIXED] as const
 
 const at = (hours: number, minutes = 0) => hours * 60 + minutes
-const utc = (...parts: [number, number, number, number, number?]) => Date.UTC(parts[0], parts[1] - 1, parts[2], parts[3], parts[4] ?? 0)
+const utc = (...parts: [number, number, number, number, number?]) =>
+  Date.UTC(parts[0], parts[1] - 1, parts[2], parts[3], parts[4] ?? 0)
 
 /** What a wall clock in the zone shows, read by the platform and not by the code under test. */
 function readClock(ms: number, timeZone: string): { day: string; minutes: number } {
   const part = clockParts(timeZone).formatToParts(ms)
   const value = (type: string) => part.find((one) => one.type === type)?.value ?? ''
-  return { day: `${value('year')}-${value('month')}-${value('day')}`, minutes: at(Number(value('hour')), Number(value('minute'))) }
+  return {
+    day: `${value('year')}-${value('month')}-${value('day')}`,
+    minutes: at(Number(value('hour')), Number(value('minute'))),
+  }
 }
 const formats = new Map<string, Intl.DateTimeFormat>()
 function clockParts(timeZone: string): Intl.DateTimeFormat {
   const known = formats.get(timeZone)
   if (known) return known
   const made = new Intl.DateTimeFormat('en-GB', {
-    timeZone, hourCycle: 'h23', year: 'numeric', month: '2-digit', day: '2-digit', hour: '2-digit', minute: '2-digit',
+    timeZone,
+    hourCycle: 'h23',
+    year: 'numeric',
+    month: '2-digit',
+    day: '2-digit',
+    hour: '2-digit',
+    minute: '2-digit',
   })
   formats.set(timeZone, made)
   return made
@@ -92,11 +102,14 @@ describe('wallClockMoments', () => {
     [DENVER, '2026-03-08', at(2), at(3), utc(2026, 3, 8, 9)],
     [BERLIN, '2026-03-29', at(2), at(3), utc(2026, 3, 29, 1)],
     [LORD_HOWE, '2026-10-04', at(2), at(2, 30), utc(2026, 10, 3, 15, 30)],
-  ])('in %s on %s gives none from the skipped minute on, and again from the first that follows', (zone, day, gapFrom, gapTo, moment) => {
-    expect(wallClockMoments(day, gapFrom - 1, zone)).toEqual([moment - MINUTE_MS])
-    for (const minutes of [gapFrom, gapFrom + 1, gapTo - 1]) expect(wallClockMoments(day, minutes, zone)).toEqual([])
-    expect(wallClockMoments(day, gapTo, zone)).toEqual([moment])
-  })
+  ])(
+    'in %s on %s gives none from the skipped minute on, and again from the first that follows',
+    (zone, day, gapFrom, gapTo, moment) => {
+      expect(wallClockMoments(day, gapFrom - 1, zone)).toEqual([moment - MINUTE_MS])
+      for (const minutes of [gapFrom, gapFrom + 1, gapTo - 1]) expect(wallClockMoments(day, minutes, zone)).toEqual([])
+      expect(wallClockMoments(day, gapTo, zone)).toEqual([moment])
+    },
+  )
 
   it.each([
     [DENVER, '2026-11-01', at(1), at(2), utc(2026, 11, 1, 7), utc(2026, 11, 1, 8)],
@@ -124,7 +137,10 @@ describe('wallClockMs', () => {
   it('moves a skipped time forward by what was skipped', () => {
     expect(readClock(wallClockMs('2026-03-08', at(2, 30), DENVER), DENVER)).toEqual({ day: '2026-03-08', minutes: at(3, 30) })
     expect(readClock(wallClockMs('2026-03-29', at(2, 30), BERLIN), BERLIN)).toEqual({ day: '2026-03-29', minutes: at(3, 30) })
-    expect(readClock(wallClockMs('2026-10-04', at(2, 10), LORD_HOWE), LORD_HOWE)).toEqual({ day: '2026-10-04', minutes: at(2, 40) })
+    expect(readClock(wallClockMs('2026-10-04', at(2, 10), LORD_HOWE), LORD_HOWE)).toEqual({
+      day: '2026-10-04',
+      minutes: at(2, 40),
+    })
   })
 
   it('takes minutes beyond the day as the next day: hour 24 is midnight', () => {
@@ -154,7 +170,8 @@ describe.each(['UTC', 'America/Denver', 'Australia/Lord_Howe'])('on a computer w
     if (localDay(ms, zone) !== day) return `localDay ${localDay(ms, zone)} instead of ${day} at ${new Date(ms).toISOString()}`
     const moments = wallClockMoments(day, minutes, zone)
     if (!moments.includes(ms)) return `no way back to ${new Date(ms).toISOString()} from ${day} ${minutes}`
-    if (wallClockMs(day, minutes, zone) !== moments[0]) return `wallClockMs is not the first moment at ${new Date(ms).toISOString()}`
+    if (wallClockMs(day, minutes, zone) !== moments[0])
+      return `wallClockMs is not the first moment at ${new Date(ms).toISOString()}`
     return 'ok'
   }
 
@@ -169,8 +186,13 @@ describe.each(['UTC', 'America/Denver', 'Australia/Lord_Howe'])('on a computer w
   })
 
   it.each([
-    [DENVER, utc(2026, 3, 8, 9)], [DENVER, utc(2026, 11, 1, 8)], [BERLIN, utc(2026, 3, 29, 1)], [BERLIN, utc(2026, 10, 25, 1)],
-    [LORD_HOWE, utc(2026, 4, 4, 15)], [LORD_HOWE, utc(2026, 10, 3, 15, 30)], [FIXED, utc(2026, 3, 8, 9)],
+    [DENVER, utc(2026, 3, 8, 9)],
+    [DENVER, utc(2026, 11, 1, 8)],
+    [BERLIN, utc(2026, 3, 29, 1)],
+    [BERLIN, utc(2026, 10, 25, 1)],
+    [LORD_HOWE, utc(2026, 4, 4, 15)],
+    [LORD_HOWE, utc(2026, 10, 3, 15, 30)],
+    [FIXED, utc(2026, 3, 8, 9)],
   ])('every minute of the four hours around a change of the clocks in %s (%d) does', (zone, change) => {
     const wrong = []
     for (let minute = -120; minute < 120; minute += 1) {

@@ -16,8 +16,8 @@ export default async function AcceptPage({ searchParams }: PageProps<'/accept'>)
       <>
         <PageHeading title="This link opens nothing" />
         <Notice tone="stop" title="Used, run out or incomplete">
-          A link works once: an invitation for 7 days, the set-up link for 24 hours. Ask your administrator for a new invitation. For setting up Daybreath,
-          start the server again; it prints a new link.
+          A link works once: an invitation for 7 days, the set-up link for 24 hours. Ask your administrator for a new invitation.
+          For setting up Daybreath, start the server again; it prints a new link.
         </Notice>
       </>
     )
@@ -25,14 +25,20 @@ export default async function AcceptPage({ searchParams }: PageProps<'/accept'>)
   if (link.kind === 'setup') {
     return (
       <>
-        <PageHeading title="Set up Daybreath" below="You become the first administrator. Administrators manage people and units; they see no patient data by that." />
+        <PageHeading
+          title="Set up Daybreath"
+          below="You become the first administrator. Administrators manage people and units; they see no patient data by that."
+        />
         <SetupForm token={key} />
       </>
     )
   }
   return (
     <>
-      <PageHeading title={`Welcome, ${link.name}`} below={`${link.hospitalName} has made an account for ${link.email}. Set your own password to begin.`} />
+      <PageHeading
+        title={`Welcome, ${link.name}`}
+        below={`${link.hospitalName} has made an account for ${link.email}. Set your own password to begin.`}
+      />
       <InvitationForm token={key} email={link.email} />
     </>
   )

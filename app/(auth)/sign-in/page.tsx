@@ -40,7 +40,7 @@ export default async function SignInPage({ searchParams }: PageProps<'/sign-in'>
       )}
       {isSetUp ? (
         <p className="mt-8">
-          <Link href="/forgot-password" className="inline-flex min-h-[44px] items-center">
+          <Link href="/forgot-password" className="inline-flex min-h-[44px] items-center underline">
             Set a new password by mail
           </Link>
         </p>

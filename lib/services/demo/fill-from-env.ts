@@ -12,7 +12,11 @@ import { makeDemoPassword } from './make-password'
 // no-door: run by hand on a database in which nobody can sign in yet; fillDemo refuses all others
 export async function fillDemoFromEnv(ctx: Ctx): Promise<{ accounts: number; rows: number }> {
   const { isDemo, demoPassword } = readEnv()
-  if (!isDemo) throw new AppError('PRECONDITION', 'The demo is filled only with DAYBREATH_DEMO=1, so that invented and real patients never mix.')
+  if (!isDemo)
+    throw new AppError(
+      'PRECONDITION',
+      'The demo is filled only with DAYBREATH_DEMO=1, so that invented and real patients never mix.',
+    )
   const password = demoPassword ?? makeDemoPassword()
   const { accounts, counts } = await fillDemo(ctx, { password })
   for (const account of accounts) process.stdout.write(`${JSON.stringify({ ...account, password })}\n`)

@@ -37,7 +37,12 @@ export async function fillDemo(ctx: Ctx, input: FillDemoInput): Promise<FilledDe
     (tx) => {
       refuseFilled(ctx)
       const counts = insertSeedRows(ctx.db, demo.rows)
-      const after = { what: 'Invented demo data imported in one batch; none of it was entered by a person.', seed, historyDays, counts }
+      const after = {
+        what: 'Invented demo data imported in one batch; none of it was entered by a person.',
+        seed,
+        historyDays,
+        counts,
+      }
       writeAudit(tx, ctx, { action: 'demo.import', after })
       return { accounts: demo.accounts.map(({ role, email }) => ({ role, email })), counts }
     },
@@ -54,7 +59,18 @@ function refuseFilled(ctx: Ctx): void {
 function makeSignIns({ accounts }: Demo, hash: string, now: number): SeedRows['account'] {
   const at = new Date(now)
   return accounts.map(({ personId }) => ({
-    id: newId(), accountId: personId, providerId: 'credential', userId: personId, accessToken: null, refreshToken: null, idToken: null,
-    accessTokenExpiresAt: null, refreshTokenExpiresAt: null, scope: null, password: hash, createdAt: at, updatedAt: at,
+    id: newId(),
+    accountId: personId,
+    providerId: 'credential',
+    userId: personId,
+    accessToken: null,
+    refreshToken: null,
+    idToken: null,
+    accessTokenExpiresAt: null,
+    refreshTokenExpiresAt: null,
+    scope: null,
+    password: hash,
+    createdAt: at,
+    updatedAt: at,
   }))
 }

@@ -15,7 +15,7 @@ export function readEndForm(ctx: Ctx, { episodeId }: { episodeId: string }): End
   const base = readBedsideForm(ctx, found)
   const decision = findLatestDecision(ctx.db, episodeId)
   const isForExtubation = decision?.choice === 'extubate' || decision?.choice === 'comfort_extubation'
-  const { trials, trialEnds } = listDayEntries(ctx.db, [episodeId], base.ventilatorDay)
+  const { trials, trialEnds } = listDayEntries(ctx.db, [episodeId], base.ventilatorDay, ctx.now)
   return {
     ...base,
     episode: toEpisodeDto(found.episode),

@@ -17,8 +17,10 @@ export function updateHospital(ctx: Ctx, input: UpdateHospitalInput): HospitalDt
     const { name, idleLockMin, version } = input
     refuseStale(updateHospitalRow(tx, hospitalId, version, { name, idleLockMin }))
     writeAudit(tx, ctx, {
-      action: 'hospital.update', subject: { kind: 'hospital', id: hospitalId },
-      before: { name: before.name, idleLockMin: before.idleLockMin }, after: { name, idleLockMin },
+      action: 'hospital.update',
+      subject: { kind: 'hospital', id: hospitalId },
+      before: { name: before.name, idleLockMin: before.idleLockMin },
+      after: { name, idleLockMin },
     })
     return { name, idleLockMin, isDemo: before.isDemo, version: version + 1 }
   })

@@ -28,12 +28,19 @@ export function openRecord(ctx: Ctx, input: OpenRecordInput): OpenedRecordDto {
   const unit = stay && findUnit(ctx.db, stay.unitId)
   if (!patient || !unit) {
     refuse(person, 'unknown record number')
-    throw new AuditedRefusal('NOT_FOUND', 'No patient was found. Nothing was opened.', { recordNumber: 'No patient has this record number. Check the number.' })
+    throw new AuditedRefusal('NOT_FOUND', 'No patient was found. Nothing was opened.', {
+      recordNumber: 'No patient has this record number. Check the number.',
+    })
   }
   if (person.actor.memberships.some((held) => held.unitId === unit.id)) return { patientId: patient.id, expiresAt: null }
   return once(ctx, 'opening.open', input, (tx) => {
     const opening = insertOpening(tx, {
-      id: newId(), patientId: patient.id, unitId: unit.id, personId: person.actor.personId, reason: input.reason, openedAt: ctx.now,
+      id: newId(),
+      patientId: patient.id,
+      unitId: unit.id,
+      personId: person.actor.personId,
+      reason: input.reason,
+      openedAt: ctx.now,
       expiresAt: ctx.now + OPENING_HOURS * HOUR_MS,
     })
     const bedLabel = findBedLabel(tx, stay.bedId) ?? ''
@@ -45,5 +52,7 @@ export function openRecord(ctx: Ctx, input: OpenRecordInput): OpenedRecordDto {
 
 /** A refused opening leaves its trace too; the number that was tried is not kept. */
 function refuse(ctx: PersonCtx, because: string): void {
-  ctx.db.transaction((tx) => writeAudit(tx, ctx, { action: 'access.denied', after: { asked: 'opening.open', because } }), { behavior: 'immediate' })
+  ctx.db.transaction((tx) => writeAudit(tx, ctx, { action: 'access.denied', after: { asked: 'opening.open', because } }), {
+    behavior: 'immediate',
+  })
 }

@@ -35,7 +35,10 @@ export function admitPatient(ctx: Ctx, input: AdmitPatientInput): AdmittedDto {
     const patient = known ? bringUpToDate(tx, known, input) : createPatient(tx, ctx, unit, input)
     const stay = insertStay(tx, { id: newId(), patientId: patient.id, unitId: unit.id, bedId: bed.id, startedAt: at })
     writeAudit(tx, ctx, {
-      action: known ? 'patient.readmit' : 'patient.admit', unitId: unit.id, subject: { kind: 'patient', id: patient.id }, before: known,
+      action: known ? 'patient.readmit' : 'patient.admit',
+      unitId: unit.id,
+      subject: { kind: 'patient', id: patient.id },
+      before: known,
       after: { patient, stay },
     })
     return { patientId: patient.id, stayId: stay.id, isReadmission: known !== undefined }
@@ -46,14 +49,25 @@ function createPatient(tx: Tx, ctx: Ctx, unit: UnitRow, input: AdmitPatientInput
   if (ctx.actor.kind !== 'person') throw new AppError('FORBIDDEN', 'Only a person can admit a patient.')
   const { recordNumber, familyName, givenName, birthDate, sex, heightCm, weightKg } = input
   return insertPatient(tx, {
-    id: newId(), hospitalId: unit.hospitalId, recordNumber, familyName, givenName, birthDate, sex, heightCm, weightKg, createdAt: ctx.now,
+    id: newId(),
+    hospitalId: unit.hospitalId,
+    recordNumber,
+    familyName,
+    givenName,
+    birthDate,
+    sex,
+    heightCm,
+    weightKg,
+    createdAt: ctx.now,
     createdBy: ctx.actor.personId,
   })
 }
 
 function bringUpToDate(tx: Tx, known: PatientRow, input: AdmitPatientInput): PatientRow {
   const after = updatePatient(tx, known, {
-    birthDate: input.birthDate ?? known.birthDate, sex: input.sex ?? known.sex, heightCm: input.heightCm ?? known.heightCm,
+    birthDate: input.birthDate ?? known.birthDate,
+    sex: input.sex ?? known.sex,
+    heightCm: input.heightCm ?? known.heightCm,
     weightKg: input.weightKg ?? known.weightKg,
   })
   if (!after) throw new AppError('CONFLICT', 'Someone changed this patient’s details in the meantime. Try once more.')
@@ -67,17 +81,30 @@ function refuseOtherPatient(tx: Tx, ctx: Ctx, known: PatientRow, input: AdmitPat
     throw disagree('recordNumber', 'This record number belongs to another name. Check the number and the spelling of the name.')
   }
   if (known.birthDate !== null && input.birthDate !== null && known.birthDate !== input.birthDate) {
-    throw disagree('birthDate', 'This record number has another date of birth. Check both; the record can be corrected after admission.')
+    throw disagree(
+      'birthDate',
+      'This record number has another date of birth. Check both; the record can be corrected after admission.',
+    )
   }
   if (known.sex !== null && input.sex !== null && known.sex !== input.sex) {
-    throw disagree('sex', 'This record number has the other sex on record. Check it; the record can be corrected after admission.')
+    throw disagree(
+      'sex',
+      'This record number has the other sex on record. Check it; the record can be corrected after admission.',
+    )
   }
   const present = findOpenStay(tx, known.id)
   if (present) {
-    throw disagree('recordNumber', present.unitId === unit.id
-      ? 'This patient is in a bed of this unit already.'
-      : 'This patient is in a bed of another unit. A move from there brings the patient here.')
+    throw disagree(
+      'recordNumber',
+      present.unitId === unit.id
+        ? 'This patient is in a bed of this unit already.'
+        : 'This patient is in a bed of another unit. A move from there brings the patient here.',
+    )
   }
   const left = findLastEndedStay(tx, known.id)?.endedAt ?? 0
-  if (at < left) throw invalidField('observed.time', `The patient left the last bed at ${formatTime(left, unit.timeZone, ctx.now)}. Give a later time.`)
+  if (at < left)
+    throw invalidField(
+      'observed.time',
+      `The patient left the last bed at ${formatTime(left, unit.timeZone, ctx.now)}. Give a later time.`,
+    )
 }

@@ -30,7 +30,10 @@ export async function acceptLink(ctx: Ctx, input: AcceptLinkInput): Promise<{ ok
       const personId = input.kind === 'setup' ? createFirstAdministrator(tx, input, ctx.now) : findInvited(tx, link)
       savePasswordHash(tx, { id: newId(), personId, hash, now: ctx.now })
       if (input.kind === 'invitation') markEmailVerified(tx, personId, ctx.now)
-      writeAudit(tx, ctx, { action: input.kind === 'setup' ? 'setup.accept' : 'person.accept', subject: { kind: 'person', id: personId } })
+      writeAudit(tx, ctx, {
+        action: input.kind === 'setup' ? 'setup.accept' : 'person.accept',
+        subject: { kind: 'person', id: personId },
+      })
       return { ok: true as const }
     },
     { behavior: 'immediate' },
@@ -38,7 +41,8 @@ export async function acceptLink(ctx: Ctx, input: AcceptLinkInput): Promise<{ ok
 }
 
 function createFirstAdministrator(tx: Tx, input: SetupInput, now: number): string {
-  if (hasAnyHospital(tx)) throw new AppError('PRECONDITION', 'Daybreath is set up already. Ask an administrator for an invitation.')
+  if (hasAnyHospital(tx))
+    throw new AppError('PRECONDITION', 'Daybreath is set up already. Ask an administrator for an invitation.')
   const hospitalId = newId()
   const personId = newId()
   insertHospital(tx, { id: hospitalId, name: input.hospitalName, isDemo: readEnv().isDemo, createdAt: now })

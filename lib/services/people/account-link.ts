@@ -19,7 +19,11 @@ export function createAccountLink(tx: Tx, link: { kind: AccountLinkKind; personI
   const token = randomBytes(32).toString('base64url')
   expireAccountLinks(tx, link.personId, link.now)
   insertAccountLink(tx, {
-    id: newId(), kind: link.kind, personId: link.personId, tokenHash: hashToken(token), createdAt: link.now,
+    id: newId(),
+    kind: link.kind,
+    personId: link.personId,
+    tokenHash: hashToken(token),
+    createdAt: link.now,
     expiresAt: link.now + LIFETIME_MS[link.kind],
   })
   return new URL(`/accept?token=${token}`, readEnv().baseUrl).href

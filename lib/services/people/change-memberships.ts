@@ -17,8 +17,13 @@ export function changeMemberships(tx: Tx, change: { personId: string; hospitalId
   const unitIds = new Set(listUnitsOfHospital(tx, hospitalId).map((unit) => unit.id))
   if (wanted.some((one) => !unitIds.has(one.unitId))) throw new AppError('NOT_FOUND', 'That unit was not found in this hospital.')
   const held = listMembershipsOf(tx, [personId])
-  const isSame = (a: { unitId: string; role: string }, b: { unitId: string; role: string }) => a.unitId === b.unitId && a.role === b.role
-  endMemberships(tx, held.filter((one) => !wanted.some((other) => isSame(one, other))).map((one) => one.id), now)
+  const isSame = (a: { unitId: string; role: string }, b: { unitId: string; role: string }) =>
+    a.unitId === b.unitId && a.role === b.role
+  endMemberships(
+    tx,
+    held.filter((one) => !wanted.some((other) => isSame(one, other))).map((one) => one.id),
+    now,
+  )
   for (const one of wanted) {
     if (held.some((other) => isSame(one, other))) continue
     insertMembership(tx, { id: newId(), personId, unitId: one.unitId, role: one.role, startedAt: now })

@@ -25,7 +25,9 @@ export function deactivatePerson(ctx: Ctx, input: DeactivatePersonInput): Person
     const sessionsEnded = deleteSessionsOf(tx, before.id)
     const person = readPersonDto(tx, before.id, hospitalId, ctx.now)
     writeAudit(tx, ctx, {
-      action: 'person.deactivate', subject: { kind: 'person', id: person.id }, before: rightsOf(before),
+      action: 'person.deactivate',
+      subject: { kind: 'person', id: person.id },
+      before: rightsOf(before),
       after: { ...rightsOf(person), sessionsEnded },
     })
     return person

@@ -18,7 +18,10 @@ export function invitePerson(ctx: Ctx, input: InvitePersonInput): PersonDto {
   const { hospitalId } = authorize(ctx, 'people.manage', 'hospital').actor
   return once(ctx, 'people.manage', input, (tx) => {
     if (findUserByEmail(tx, input.email)) {
-      throw invalidField('email', 'This e-mail address already has an account. Look for it in the list, also among the deactivated.')
+      throw invalidField(
+        'email',
+        'This e-mail address already has an account. Look for it in the list, also among the deactivated.',
+      )
     }
     const personId = newId()
     const { name, email, isAdministrator, memberships } = input

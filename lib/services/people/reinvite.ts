@@ -30,7 +30,10 @@ export function reinvitePerson(ctx: Ctx, input: ReinvitePersonInput): PersonDto 
     queueAccountMail(tx, { kind: 'invitation', personId: before.id, recipient: before.email, link, now: ctx.now })
     const person = readPersonDto(tx, before.id, hospitalId, ctx.now)
     writeAudit(tx, ctx, {
-      action: 'person.reinvite', subject: { kind: 'person', id: person.id }, before: rightsOf(before), after: rightsOf(person),
+      action: 'person.reinvite',
+      subject: { kind: 'person', id: person.id },
+      before: rightsOf(before),
+      after: rightsOf(person),
     })
     return person
   })

@@ -16,13 +16,17 @@ export function setRoles(ctx: Ctx, input: SetRolesInput): PersonDto {
   const { hospitalId } = authorize(ctx, 'people.manage', 'hospital').actor
   return once(ctx, 'people.manage', input, (tx) => {
     const before = readPersonDto(tx, input.personId, hospitalId, ctx.now)
-    if (before.state === 'deactivated') throw new AppError('PRECONDITION', 'This person is deactivated. Invite the person again first.')
+    if (before.state === 'deactivated')
+      throw new AppError('PRECONDITION', 'This person is deactivated. Invite the person again first.')
     if (before.isAdministrator && !input.isAdministrator) refuseLastAdministrator(tx, before.id, hospitalId)
     refuseStale(updatePerson(tx, before.id, input.version, { isAdministrator: input.isAdministrator }))
     changeMemberships(tx, { personId: before.id, hospitalId, wanted: input.memberships, now: ctx.now })
     const person = readPersonDto(tx, before.id, hospitalId, ctx.now)
     writeAudit(tx, ctx, {
-      action: 'person.set_roles', subject: { kind: 'person', id: person.id }, before: rightsOf(before), after: rightsOf(person),
+      action: 'person.set_roles',
+      subject: { kind: 'person', id: person.id },
+      before: rightsOf(before),
+      after: rightsOf(person),
     })
     return person
   })

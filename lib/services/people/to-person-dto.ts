@@ -17,7 +17,9 @@ export function toPersonDtos(tx: Tx, persons: readonly PersonWithEmail[], now: n
     ...person,
     state: deactivatedAt !== null ? 'deactivated' : withPassword.has(person.id) ? 'active' : 'invited',
     invitationExpiresAt: links.find((link) => link.personId === person.id)?.expiresAt ?? null,
-    memberships: held.filter((one) => one.personId === person.id).map(({ unitId, unitName, role }) => ({ unitId, unitName, role })),
+    memberships: held
+      .filter((one) => one.personId === person.id)
+      .map(({ unitId, unitName, role }) => ({ unitId, unitName, role })),
   }))
 }
 
@@ -32,7 +34,8 @@ export function readPersonDto(tx: Tx, personId: string, hospitalId: string, now:
 /** What the audit log keeps of a person's rights: ids, no name and no address. */
 export function rightsOf(person: PersonDto) {
   return {
-    isAdministrator: person.isAdministrator, state: person.state,
+    isAdministrator: person.isAdministrator,
+    state: person.state,
     memberships: person.memberships.map(({ unitId, role }) => ({ unitId, role })),
   }
 }

@@ -1,6 +1,11 @@
 import 'server-only'
 import {
-  listAirwayEventsForReview, listEpisodesForReview, listScreeningWindows, listScreensForReview, listStaysForReview, listTrialsForReview,
+  listAirwayEventsForReview,
+  listEpisodesForReview,
+  listScreeningWindows,
+  listScreensForReview,
+  listStaysForReview,
+  listTrialsForReview,
 } from '@/db/queries/review'
 import { authorize } from '@/lib/access/door'
 import { mayInUnit } from '@/lib/access/policy'
@@ -34,11 +39,22 @@ export function readReview(ctx: Ctx, input: ReviewQueryInput): ReviewDto {
     airwayEvents: listAirwayEventsForReview(ctx.db, period),
   })
   const mayExport = ctx.actor.kind === 'person' && mayInUnit(ctx.actor.memberships, 'review.export', unit.id)
-  return { unit: { id: unit.id, name: unit.name, timeZone: unit.timeZone }, from, to, day: today, countedAtMs: ctx.now, months, mayExport }
+  return {
+    unit: { id: unit.id, name: unit.name, timeZone: unit.timeZone },
+    from,
+    to,
+    day: today,
+    countedAtMs: ctx.now,
+    months,
+    mayExport,
+  }
 }
 
 /** The same for a page, where months that make no sense are answered with what is wrong at which field. */
-export function readReviewOrRefusal(ctx: Ctx, input: ReviewQueryInput): { review: ReviewDto } | { review: null; refused: Record<string, string> } {
+export function readReviewOrRefusal(
+  ctx: Ctx,
+  input: ReviewQueryInput,
+): { review: ReviewDto } | { review: null; refused: Record<string, string> } {
   try {
     return { review: readReview(ctx, input) }
   } catch (error) {

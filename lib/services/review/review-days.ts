@@ -21,10 +21,15 @@ function midnightMs(day: string, timeZone: string): number {
  * The calendar days from firstDay to lastDay (yyyy-mm-dd, both included) in a zone, each with its bounds and the moment at which the
  * screening window closed under the protocol in force as the day began. Windows come oldest start first.
  */
-export function reviewDays(firstDay: string, lastDay: string, timeZone: string, windows: readonly ScreeningWindow[]): ReviewDay[] {
+export function reviewDays(
+  firstDay: string,
+  lastDay: string,
+  timeZone: string,
+  windows: readonly ScreeningWindow[],
+): ReviewDay[] {
   const days: ReviewDay[] = []
   let startMs = midnightMs(firstDay, timeZone)
-  for (let day = firstDay; day <= lastDay; ) {
+  for (let day = firstDay; day <= lastDay;) {
     const next = dayAfter(day)
     const endMs = midnightMs(next, timeZone)
     days.push({ day, startMs, endMs, closesMs: closesMs(day, startMs, endMs, timeZone, windows) })

@@ -8,13 +8,19 @@ export const MOST_MONTHS = 24
  * First and last month (yyyy-mm) of a review. Left out: up to this month, and 24 months in all.
  * Refuses, at the field: a month to come, a first month after the last, more than 24 months.
  */
-export function reviewMonths(given: { from?: string | undefined; to?: string | undefined }, thisMonth: string): { from: string; to: string } {
+export function reviewMonths(
+  given: { from?: string | undefined; to?: string | undefined },
+  thisMonth: string,
+): { from: string; to: string } {
   const to = given.to ?? thisMonth
   const from = given.from ?? shiftMonth(to, 1 - MOST_MONTHS)
-  if (to > thisMonth) throw invalidField('to', `This month is still to come. The last one that can be reviewed is ${formatMonth(thisMonth)}.`)
-  if (from > to) throw invalidField('from', `The first month is after the last one, ${formatMonth(to)}. Give an earlier first month.`)
+  if (to > thisMonth)
+    throw invalidField('to', `This month is still to come. The last one that can be reviewed is ${formatMonth(thisMonth)}.`)
+  if (from > to)
+    throw invalidField('from', `The first month is after the last one, ${formatMonth(to)}. Give an earlier first month.`)
   const earliest = shiftMonth(to, 1 - MOST_MONTHS)
-  if (from < earliest) throw invalidField('from', `A review covers ${MOST_MONTHS} months at most. Give ${formatMonth(earliest)} or later.`)
+  if (from < earliest)
+    throw invalidField('from', `A review covers ${MOST_MONTHS} months at most. Give ${formatMonth(earliest)} or later.`)
   return { from, to }
 }
 

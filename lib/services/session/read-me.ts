@@ -15,11 +15,21 @@ export function readMe(ctx: Ctx): MeDto {
   const hospital = findHospital(ctx.db, actor.hospitalId)
   const state = findSessionState(ctx.db, actor.sessionId)
   if (!person || !hospital || !state) throw new AppError('UNAUTHENTICATED', 'Please sign in.')
-  const memberships = listMembershipsOf(ctx.db, [actor.personId])
-    .map(({ unitId, unitName, timeZone, role }) => ({ unitId, unitName, timeZone, role }))
+  const memberships = listMembershipsOf(ctx.db, [actor.personId]).map(({ unitId, unitName, timeZone, role }) => ({
+    unitId,
+    unitName,
+    timeZone,
+    role,
+  }))
   const isIdle = ctx.now - state.lastActiveAt > hospital.idleLockMin * MINUTE_MS
   return {
-    name: person.name, email: person.email, hospitalName: hospital.name, isDemo: hospital.isDemo, isAdministrator: person.isAdministrator,
-    memberships, isLocked: state.lockedAt !== null || isIdle, idleLockMin: hospital.idleLockMin,
+    name: person.name,
+    email: person.email,
+    hospitalName: hospital.name,
+    isDemo: hospital.isDemo,
+    isAdministrator: person.isAdministrator,
+    memberships,
+    isLocked: state.lockedAt !== null || isIdle,
+    idleLockMin: hospital.idleLockMin,
   }
 }

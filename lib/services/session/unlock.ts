@@ -22,8 +22,12 @@ export async function unlockSession(ctx: Ctx, input: UnlockSessionInput): Promis
   }
   const left = MOST_FAILURES - failures
   recordFailure(person, left)
-  if (left <= 0) throw new AppError('UNAUTHENTICATED', 'That was the fifth wrong password, so this session has ended. Please sign in.')
-  throw invalidField('password', `That is not your password. ${left === 1 ? 'One try is' : `${left} tries are`} left before you are signed out.`)
+  if (left <= 0)
+    throw new AppError('UNAUTHENTICATED', 'That was the fifth wrong password, so this session has ended. Please sign in.')
+  throw invalidField(
+    'password',
+    `That is not your password. ${left === 1 ? 'One try is' : `${left} tries are`} left before you are signed out.`,
+  )
 }
 
 /** Counts a try before its password is checked, so that tries at the same moment are all counted. Answers how many there were. */
@@ -31,7 +35,8 @@ function countTry({ db, actor }: PersonCtx): number {
   return db.transaction(
     (tx) => {
       const state = findSessionState(tx, actor.sessionId)
-      if (!state || state.failedUnlocks >= MOST_FAILURES) throw new AppError('UNAUTHENTICATED', 'This session has ended. Please sign in.')
+      if (!state || state.failedUnlocks >= MOST_FAILURES)
+        throw new AppError('UNAUTHENTICATED', 'This session has ended. Please sign in.')
       updateSessionState(tx, actor.sessionId, { failedUnlocks: state.failedUnlocks + 1 })
       return state.failedUnlocks + 1
     },
@@ -56,7 +61,8 @@ function recordFailure(ctx: PersonCtx, left: number): void {
     (tx) => {
       if (left <= 0) deleteSession(tx, sessionId)
       writeAudit(tx, ctx, {
-        action: left <= 0 ? 'session.ended_by_wrong_passwords' : 'session.unlock_failed', subject: { kind: 'person', id: personId },
+        action: left <= 0 ? 'session.ended_by_wrong_passwords' : 'session.unlock_failed',
+        subject: { kind: 'person', id: personId },
       })
     },
     { behavior: 'immediate' },

@@ -4,13 +4,14 @@ import { listFreeBeds, listLatestSettings, listVentilatedOfUnit } from '@/db/que
 import { authorize } from '@/lib/access/door'
 import type { TodayDto, TodayRowDto } from '@/lib/schemas/today'
 import type { Ctx } from '@/lib/server/ctx'
-import { ageYears, HOUR_MS, wallClockMs } from '@/lib/shared/time'
+import { ageYears, HOUR_MS } from '@/lib/shared/time'
 import type { DayRecord } from '@/lib/weaning/day-record'
 import { isAdult } from '@/lib/weaning/indices/is-adult'
 import { nextMove } from '@/lib/weaning/next-move'
 import { makeDayClock } from './day-clock'
 import { findUnitProtocol } from './find-unit-protocol'
-import { LONGEST_DAY_MS } from './read-next-move'
+import { rememberedMoment } from './remembered-time'
+import { LONGEST_DAY_MS, sinceDay } from './since-day'
 import { groupDayEntries, toDayRecord } from './to-day-record'
 import { latestScreenOf, toTodayRow, type Ventilated } from './to-today-row'
 
@@ -24,7 +25,7 @@ export function listToday(ctx: Ctx, input: { unitId: string }): TodayDto {
   const clock = makeDayClock(ctx.now, unit.timeZone, inForce.content.screeningWindow)
   const found = latestOfEachPatient(listVentilatedOfUnit(ctx.db, unit.id, ctx.now - WATCH_HOURS * HOUR_MS))
   const episodeIds = found.map((row) => row.episode.id)
-  const grouped = groupDayEntries(listDayEntries(ctx.db, episodeIds, clock.previousDay, ctx.now - LONGEST_DAY_MS))
+  const grouped = groupDayEntries(listDayEntries(ctx.db, episodeIds, sinceDay(clock), ctx.now - LONGEST_DAY_MS))
   const settingsOf = new Map(listLatestSettings(ctx.db, episodeIds).map((row) => [row.episodeId, row]))
   const listed = found.map((row) => {
     const record = toDayRecord(row.episode, isAdult(ageYears(row.birthDate, clock.day)), grouped, find, ctx.now)
@@ -38,8 +39,8 @@ export function listToday(ctx: Ctx, input: { unitId: string }): TodayDto {
       id: unit.id, name: unit.name, timeZone: unit.timeZone, dayTrackFromHour: unit.dayTrackFromHour, dayTrackToHour: unit.dayTrackToHour,
     },
     day: clock.day,
-    trackFromMs: wallClockMs(clock.day, unit.dayTrackFromHour * 60, unit.timeZone),
-    trackToMs: wallClockMs(clock.day, unit.dayTrackToHour * 60, unit.timeZone),
+    trackFromMs: rememberedMoment(clock.day, unit.dayTrackFromHour * 60, unit.timeZone),
+    trackToMs: rememberedMoment(clock.day, unit.dayTrackToHour * 60, unit.timeZone),
     nowMs: ctx.now,
     counts: countRows(listed.filter(({ row }) => row.endedAtMs === null), clock.day),
     rows: listed.map(({ row }) => row),

@@ -2,16 +2,14 @@ import 'server-only'
 import type { Tx } from '@/db/client'
 import { listDayEntries } from '@/db/queries/day-entries'
 import type { EpisodeInUnit } from '@/lib/access/door'
-import { ageYears, HOUR_MS, localDay, shiftDay } from '@/lib/shared/time'
+import { ageYears, localDay, shiftDay } from '@/lib/shared/time'
 import type { DayRecord, NextMove } from '@/lib/weaning/day-record'
 import { isAdult } from '@/lib/weaning/indices/is-adult'
 import { nextMove } from '@/lib/weaning/next-move'
 import { makeDayClock } from './day-clock'
 import { findUnitProtocol } from './find-unit-protocol'
+import { LONGEST_DAY_MS } from './since-day'
 import { groupDayEntries, toDayRecord, type FindProtocol } from './to-day-record'
-
-/** A time to look again may lie earlier the same day, but not longer ago than this. */
-export const LONGEST_DAY_MS = 25 * HOUR_MS
 
 /** The part of what the door hands out that is needed here. */
 export type EpisodeAtHand = Pick<EpisodeInUnit, 'episode' | 'patient' | 'unit'>

@@ -67,8 +67,9 @@ function parseReadings(json: string): ObservedReadings {
   return JSON.parse(json) as ObservedReadings
 }
 
-function toLooks(observations: { observedAt: number; readingsJson: string }[]): Observation[] {
-  return observations.map(({ observedAt, readingsJson }) => ({ atMs: observedAt, readings: parseReadings(readingsJson) }))
+function toLooks(observations: { observedAt: number; readingsJson: string | null }[]): Observation[] {
+  return observations.flatMap(({ observedAt, readingsJson }) =>
+    readingsJson === null ? [] : [{ atMs: observedAt, readings: parseReadings(readingsJson) }])
 }
 
 function toDayHold(row: DayEntries['holds'][number], grouped: GroupedEntries, findProtocol: FindProtocol, nowMs: number): DayHold {

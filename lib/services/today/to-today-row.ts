@@ -2,8 +2,8 @@ import type { listLatestSettings, listVentilatedOfUnit } from '@/db/queries/toda
 import type { TodayRowDto } from '@/lib/schemas/today'
 import { ventilatorDayNumber } from '@/lib/weaning/course/ventilator-day-number'
 import type { DayRecord, DayScreen, NextMove } from '@/lib/weaning/day-record'
-import { localDayMemo } from './local-day-memo'
 import { moveHref } from './move-href'
+import { rememberedDay } from './remembered-time'
 import { toDayTrack } from './to-day-track'
 
 export type Ventilated = ReturnType<typeof listVentilatedOfUnit>[number]
@@ -15,7 +15,7 @@ type Parts = {
 /** One patient's row on Today. `day` is the unit's calendar day now. */
 export function toTodayRow({ row, record, move, settings, day, timeZone, pairingWindowMin }: Parts): TodayRowDto {
   const { episode } = row
-  const lastDay = episode.endedAt === null ? day : localDayMemo(episode.endedAt, timeZone)
+  const lastDay = episode.endedAt === null ? day : rememberedDay(episode.endedAt, timeZone)
   return {
     patientId: row.patientId,
     episodeId: episode.id,
@@ -23,7 +23,7 @@ export function toTodayRow({ row, record, move, settings, day, timeZone, pairing
     bedOrder: row.bedOrder,
     familyName: row.familyName,
     givenName: row.givenName,
-    ventilatorDayNumber: ventilatorDayNumber(localDayMemo(episode.startedAt, timeZone), lastDay),
+    ventilatorDayNumber: ventilatorDayNumber(rememberedDay(episode.startedAt, timeZone), lastDay),
     airway: episode.airway,
     settings: settings
       ? { mode: settings.mode, fio2Fraction: settings.fio2Fraction, peepCmH2O: settings.peepCmH2O, observedAtMs: settings.observedAt }

@@ -19,7 +19,13 @@ export function createUnit(ctx: Ctx, input: CreateUnitInput): UnitAdminDto {
     insertUnit(tx, { id: unitId, hospitalId: actor.hospitalId, ...unit, createdAt: ctx.now })
     placeBeds(tx, unitId, bedLabels, ctx.now)
     insertFirstProtocol(tx, {
-      id: newId(), unitId, number: 1, content: defaultProtocol, isDefault: true, draftedAt: ctx.now, startsAt: ctx.now,
+      id: newId(),
+      unitId,
+      number: 1,
+      content: defaultProtocol,
+      isDefault: true,
+      draftedAt: ctx.now,
+      startsAt: ctx.now,
       note: 'Default values, in force until a physician of the unit approves a version.',
     })
     insertMailSchedule(tx, { unitId, morningDueMin: defaultProtocol.screeningWindow.opensMin })

@@ -18,5 +18,8 @@ export function placeBeds(tx: Tx, unitId: string, labels: readonly string[], now
   }
   if (fresh.length === 0) return
   const last = findLastBedOrder(tx, unitId)
-  insertBeds(tx, fresh.map((label, at) => ({ id: newId(), unitId, label, sortOrder: last + at + 1, createdAt: now })))
+  insertBeds(
+    tx,
+    fresh.map((label, at) => ({ id: newId(), unitId, label, sortOrder: last + at + 1, createdAt: now })),
+  )
 }

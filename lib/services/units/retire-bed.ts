@@ -17,7 +17,12 @@ export function retireBed(ctx: Ctx, input: RetireBedInput): UnitAdminDto {
     if (bed.retiredAt !== null) throw new AppError('PRECONDITION', `Bed ${bed.label} is out of use already.`)
     if (isBedTaken(tx, bed.id)) throw new AppError('PRECONDITION', `Bed ${bed.label} is in use; it must be empty first.`)
     setBedRetired(tx, bed.id, ctx.now)
-    writeAudit(tx, ctx, { action: 'bed.retire', unitId: bed.unitId, subject: { kind: 'bed', id: bed.id }, after: { label: bed.label } })
+    writeAudit(tx, ctx, {
+      action: 'bed.retire',
+      unitId: bed.unitId,
+      subject: { kind: 'bed', id: bed.id },
+      after: { label: bed.label },
+    })
     return readUnitAdminDto(tx, bed.unitId, actor.hospitalId)
   })
 }

@@ -8,11 +8,21 @@ type UnitRow = ReturnType<typeof listUnitsOfHospital>[number]
 
 /** Units as their administration sees them: settings and bed labels, nothing about who lies there. */
 export function toUnitAdminDtos(tx: Tx, units: readonly UnitRow[]): UnitAdminDto[] {
-  const beds = listBedsOf(tx, units.map((unit) => unit.id))
+  const beds = listBedsOf(
+    tx,
+    units.map((unit) => unit.id),
+  )
   return units.map((unit) => ({
-    id: unit.id, name: unit.name, timeZone: unit.timeZone, altitudeM: unit.altitudeM, barometricPressureMmHg: unit.barometricPressureMmHg,
-    dayTrackFromHour: unit.dayTrackFromHour, dayTrackToHour: unit.dayTrackToHour, version: unit.version,
-    beds: beds.filter((bed) => bed.unitId === unit.id)
+    id: unit.id,
+    name: unit.name,
+    timeZone: unit.timeZone,
+    altitudeM: unit.altitudeM,
+    barometricPressureMmHg: unit.barometricPressureMmHg,
+    dayTrackFromHour: unit.dayTrackFromHour,
+    dayTrackToHour: unit.dayTrackToHour,
+    version: unit.version,
+    beds: beds
+      .filter((bed) => bed.unitId === unit.id)
       .map((bed) => ({ id: bed.id, label: bed.label, isRetired: bed.retiredAt !== null })),
   }))
 }

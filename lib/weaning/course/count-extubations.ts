@@ -51,16 +51,21 @@ export function countExtubations(events: readonly ReviewAirwayEvent[], unitId: s
   const months = new Map<string, ExtubationCounts>()
   for (const ofPatient of byPatient.values()) {
     ofPatient.sort((a, b) => a.observedMs - b.observedMs)
-    const found = reintubations(ofPatient.map(({ event, observedMs }) => ({ event, atMs: observedMs })), nowMs)
+    const found = reintubations(
+      ofPatient.map(({ event, observedMs }) => ({ event, atMs: observedMs })),
+      nowMs,
+    )
     // Both lists are by time, so that the first extubation found is the first extubation event.
-    ofPatient.filter(({ event }) => isExtubation(event)).forEach((event, index) => {
-      const extubation = found[index]
-      if (event.unitId !== unitId || !extubation) return
-      const month = event.ventilatorDay.slice(0, 7)
-      const counts = months.get(month) ?? emptyCounts()
-      months.set(month, counts)
-      addExtubation(counts, extubation, nowMs)
-    })
+    ofPatient
+      .filter(({ event }) => isExtubation(event))
+      .forEach((event, index) => {
+        const extubation = found[index]
+        if (event.unitId !== unitId || !extubation) return
+        const month = event.ventilatorDay.slice(0, 7)
+        const counts = months.get(month) ?? emptyCounts()
+        months.set(month, counts)
+        addExtubation(counts, extubation, nowMs)
+      })
   }
   return { of: (month: string): ExtubationCounts => months.get(month) ?? emptyCounts() }
 }

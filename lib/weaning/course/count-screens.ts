@@ -32,7 +32,11 @@ const NOTHING: ScreenCounts = {
  * (ready or not ready) makes it done, an incomplete one does not. Each day falls under one heading only.
  * @example countScreens(ventilated, screens, episodes).of('2026-11') // { eligible: 150, done: 141, … }
  */
-export function countScreens(ventilated: readonly VentilatedDay[], screens: readonly ReviewScreen[], episodes: readonly ReviewEpisode[]) {
+export function countScreens(
+  ventilated: readonly VentilatedDay[],
+  screens: readonly ReviewScreen[],
+  episodes: readonly ReviewEpisode[],
+) {
   const patientOf = new Map(episodes.map(({ episodeId, patientId }) => [episodeId, patientId]))
   const ofPatients = new Map<string, Map<string, ReviewScreen[]>>()
   for (const screen of screens) {

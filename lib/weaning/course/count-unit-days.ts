@@ -3,7 +3,13 @@ import type { ReviewDay } from './monthly-measures'
 /** A stay of a patient in a unit; endMs null while it lasts. */
 export type ReviewStay = { patientId: string; unitId: string; startMs: number; endMs: number | null }
 /** A run of invasive ventilation; endMs null while it lasts. */
-export type ReviewEpisode = { episodeId: string; patientId: string; startMs: number; endMs: number | null; birthDate: string | null }
+export type ReviewEpisode = {
+  episodeId: string
+  patientId: string
+  startMs: number
+  endMs: number | null
+  birthDate: string | null
+}
 
 /** One ventilator day of one patient that belongs to the unit. firstStartMs is when the earliest episode touching the day began. */
 export type VentilatedDay = { patientId: string; day: ReviewDay; firstStartMs: number; birthDate: string | null; nowMs: number }
@@ -46,7 +52,8 @@ function daysInUnit({ unitId, days, nowMs, stays }: Omit<Input, 'episodes'>): Ma
     const inUnit = new Map<number, boolean>()
     found.set(patientId, inUnit)
     ofPatient.sort((a, b) => a.startMs - b.startMs)
-    for (const stay of ofPatient) forEachDay(days, stay.startMs, stay.endMs, nowMs, (index) => inUnit.set(index, stay.unitId === unitId))
+    for (const stay of ofPatient)
+      forEachDay(days, stay.startMs, stay.endMs, nowMs, (index) => inUnit.set(index, stay.unitId === unitId))
   }
   return found
 }
@@ -68,7 +75,13 @@ function addOne(counts: Map<string, number>, day: ReviewDay | undefined): void {
 }
 
 /** The days that [startMs, endMs) touches; an empty interval touches the day of its start, an open one runs to now. */
-function forEachDay(days: ReviewDay[], startMs: number, endMs: number | null, nowMs: number, visit: (index: number, day: ReviewDay) => void): void {
+function forEachDay(
+  days: ReviewDay[],
+  startMs: number,
+  endMs: number | null,
+  nowMs: number,
+  visit: (index: number, day: ReviewDay) => void,
+): void {
   if (startMs > nowMs) return
   const lastMs = Math.max(startMs, Math.min(endMs === null ? nowMs : endMs - 1, nowMs))
   for (let index = firstDayEndingAfter(days, startMs); index < days.length; index += 1) {

@@ -33,15 +33,17 @@ const WINDOWS = [
   { window: 'within7d', words: '7 days' },
 ] as const
 
-const reintubationColumns = WINDOWS.flatMap(({ window, words }) => [
+const reintubationShares = WINDOWS.map(({ window, words }) =>
+  percent(window, `Within ${words}`, ({ extubations: { afterPlanned } }) =>
+    share(afterPlanned[window].reintubated, afterPlanned[window].known),
+  ),
+)
+const reintubationCounts = WINDOWS.flatMap(({ window, words }) => [
   count(`${window}Reintubated`, `Reintubated within ${words}`, ({ extubations }) => extubations.afterPlanned[window].reintubated),
   count(
     `${window}Known`,
     `Of planned extubations with ${words} over`,
     ({ extubations }) => extubations.afterPlanned[window].known,
-  ),
-  percent(window, `Within ${words}`, ({ extubations: { afterPlanned } }) =>
-    share(afterPlanned[window].reintubated, afterPlanned[window].known),
   ),
 ])
 
@@ -81,13 +83,14 @@ export const MEASURE_COLUMNS: Record<ReviewMeasure, MeasureColumn[]> = {
   ],
   reintubations: [
     count('planned', 'Planned extubations', ({ extubations }) => extubations.planned),
+    ...reintubationShares,
+    ...reintubationCounts,
     count('tooRecent', 'Too recent to know (7 days)', ({ extubations }) => extubations.afterPlanned.within7d.tooRecent),
     count(
       'tooRecentReintubated',
       'Of these reintubated already',
       ({ extubations }) => extubations.afterPlanned.within7d.tooRecentReintubated,
     ),
-    ...reintubationColumns,
     count('unplanned', 'Unplanned extubations', ({ extubations }) => extubations.unplanned),
     count(
       'unplannedReintubated',

@@ -1,4 +1,3 @@
-import type { TrialOutcome } from '@/lib/weaning/vocabulary'
 import { countScreens, type ReviewScreen, type ScreenCounts } from './count-screens'
 import { countExtubations, type ExtubationCounts, type ReviewAirwayEvent } from './count-extubations'
 import { countUnitDays, type ReviewEpisode, type ReviewStay } from './count-unit-days'

@@ -15,7 +15,10 @@ let calls: Call[]
 let answers: Record<string, { status: number; body: unknown }>
 
 beforeEach(() => {
-  vi.useFakeTimers({ now: Date.UTC(2026, 2, 3, 8), toFake: ['Date', 'setTimeout', 'clearTimeout', 'setInterval', 'clearInterval'] })
+  vi.useFakeTimers({
+    now: Date.UTC(2026, 2, 3, 8),
+    toFake: ['Date', 'setTimeout', 'clearTimeout', 'setInterval', 'clearInterval'],
+  })
   calls = []
   answers = { '/api/me': { status: 200, body: { email: EMAIL, isLocked: false } } }
   vi.stubGlobal('fetch', (path: string, init: RequestInit = {}) => {
@@ -121,7 +124,10 @@ describe('the idle guard', () => {
     const page = showPage()
     await serverLocks()
     const message = 'That is not your password. 4 tries are left before you are signed out.'
-    answers['/api/session/unlock'] = { status: 422, body: { code: 'INVALID', message: 'Look', fields: { password: message }, requestId: 'r' } }
+    answers['/api/session/unlock'] = {
+      status: 422,
+      body: { code: 'INVALID', message: 'Look', fields: { password: message }, requestId: 'r' },
+    }
     await giveBack('wrong')
     expect(page.isDrawn()).toBe(false)
     const field = screen.getByLabelText('Password of Rowan Hale')

@@ -62,6 +62,14 @@ test('says how late an overdue move is', () => {
   expect(screen.getByText('4 min late')).toBeTruthy()
 })
 
+test('shows no ventilator settings as current once ventilation has ended', () => {
+  const ended = { kind: 'none', reason: { code: 'episode_ended', end: 'extubated', atMs: NOW } } as const
+  open(makeToday([makeRow(3, { endedAtMs: NOW, move: ended, moveHref: null })]))
+  expect(screen.getByRole('heading', { level: 2 }).textContent).toBe('After extubation · 1')
+  expect(screen.getByText(/last ventilator day/)).toBeTruthy()
+  expect(document.body.textContent).not.toContain('PC-CSV')
+})
+
 test('groups by whose move it is, and lists by bed with the empty ones when asked', async () => {
   open(makeToday([makeRow(1, { move: owed('decide', 'physician', NOW) }), makeRow(2)]))
   expect(screen.getAllByRole('heading', { level: 2 }).map((heading) => heading.textContent)).toEqual([

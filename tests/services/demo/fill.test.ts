@@ -29,7 +29,13 @@ describe('filling the demo', () => {
   beforeAll(async () => {
     db = openTestDatabase()
     filled = await fillDemo(asJob(db), { password: PASSWORD, historyDays: 60 })
-    today = new Map(db.select().from(units).all().map(({ id, name }) => [name, listToday(asJob(db), { unitId: id })]))
+    today = new Map(
+      db
+        .select()
+        .from(units)
+        .all()
+        .map(({ id, name }) => [name, listToday(asJob(db), { unitId: id })]),
+    )
   })
   const unitToday = (name: string): TodayDto => {
     const found = today.get(name)
@@ -49,13 +55,35 @@ describe('filling the demo', () => {
   })
 
   it.each([
-    ['M01', 'rt screen'], ['M02', 'rt complete_screen'], ['M03', 'nurse hold'], ['M04', 'nurse observe_hold'], ['M05', 'rt start_trial'],
-    ['M06', 'rt observe_trial overdue'], ['M07', 'rt observe_trial'], ['M08', 'physician decide'], ['M09', 'rt extubate'], ['M10', 'look_again_later'],
-    ['M11', 'excused'], ['M12', 'no row'], ['M13', 'episode_ended'], ['M14', 'no row'], ['M15', 'not_ready'], ['M16', 'rt screen'],
+    ['M01', 'rt screen'],
+    ['M02', 'rt complete_screen'],
+    ['M03', 'nurse hold'],
+    ['M04', 'nurse observe_hold'],
+    ['M05', 'rt start_trial'],
+    ['M06', 'rt observe_trial overdue'],
+    ['M07', 'rt observe_trial'],
+    ['M08', 'physician decide'],
+    ['M09', 'rt extubate'],
+    ['M10', 'look_again_later'],
+    ['M11', 'excused'],
+    ['M12', 'no row'],
+    ['M13', 'episode_ended'],
+    ['M14', 'no row'],
+    ['M15', 'not_ready'],
+    ['M16', 'rt screen'],
   ])('shows in bed %s of the medical unit: %s', (bed, state) => expect(stateOf('Medical ICU', bed)).toBe(state))
   it.each([
-    ['S01', 'hold_unsafe'], ['S02', 'hold_not_tolerated'], ['S03', 'trial_failed'], ['S04', 'rt start_trial'], ['S05', 'tracheostomy_pathway'],
-    ['S06', 'rt start_trial'], ['S07', 'started_after_window'], ['S08', 'not_adult'], ['S09', 'rt screen overdue'], ['S10', 'no row'], ['S11', 'no row'],
+    ['S01', 'hold_unsafe'],
+    ['S02', 'hold_not_tolerated'],
+    ['S03', 'trial_failed'],
+    ['S04', 'rt start_trial'],
+    ['S05', 'tracheostomy_pathway'],
+    ['S06', 'rt start_trial'],
+    ['S07', 'started_after_window'],
+    ['S08', 'not_adult'],
+    ['S09', 'rt screen overdue'],
+    ['S10', 'no row'],
+    ['S11', 'no row'],
     ['S12', 'physician decide_again'],
   ])('shows in bed %s of the surgical unit: %s', (bed, state) => expect(stateOf('Surgical ICU', bed)).toBe(state))
   it('leaves one bed of each unit empty', () => {
@@ -66,7 +94,11 @@ describe('filling the demo', () => {
       const move = unitToday(name).rows.find(({ bedLabel }) => bedLabel === bed)?.move
       return move?.kind === 'move' ? move.why.code : null
     }
-    expect([why('Medical ICU', 'M05'), why('Surgical ICU', 'S06'), why('Surgical ICU', 'S04')]).toEqual(['pairing_window', 'hold_not_needed', 'trial_was_stopped'])
+    expect([why('Medical ICU', 'M05'), why('Surgical ICU', 'S06'), why('Surgical ICU', 'S04')]).toEqual([
+      'pairing_window',
+      'hold_not_needed',
+      'trial_was_stopped',
+    ])
   })
 
   it('fits the figures of an intensive care unit', () => {
@@ -96,34 +128,60 @@ describe('filling the demo', () => {
     for (const row of db.select().from(decisions).all()) {
       const { evidence, choice, reasons, lookAgainAt, supportAfter, steroidsPlanned, note, statement } = row
       expect(statement).toMatch(/^Invented\. I have decided/)
-      expect(row.contentHash).toBe(contentHash({ evidence, choice, plan: { reasons, lookAgainAt, supportAfter, steroidsPlanned, note }, statement }))
+      expect(row.contentHash).toBe(
+        contentHash({ evidence, choice, plan: { reasons, lookAgainAt, supportAfter, steroidsPlanned, note }, statement }),
+      )
     }
   })
   it('puts nothing after now', () => {
-    for (const table of ['settings', 'gases', 'screens', 'holds', 'hold_observations', 'hold_ends', 'trials', 'trial_observations', 'trial_ends', 'decisions', 'airway_events']) {
-      const { latest } = db.$client.prepare(`select max(max(observed_at, recorded_at)) latest from ${table}`).get() as { latest: number }
+    for (const table of [
+      'settings',
+      'gases',
+      'screens',
+      'holds',
+      'hold_observations',
+      'hold_ends',
+      'trials',
+      'trial_observations',
+      'trial_ends',
+      'decisions',
+      'airway_events',
+    ]) {
+      const { latest } = db.$client.prepare(`select max(max(observed_at, recorded_at)) latest from ${table}`).get() as {
+        latest: number
+      }
       expect(latest, table).toBeLessThanOrEqual(NOW)
     }
   })
   it('keeps every entry within its episode and its stay', () => {
     for (const table of ['settings', 'gases', 'screens', 'holds', 'trials', 'decisions']) {
-      const outside = db.$client.prepare(`
+      const outside = db.$client
+        .prepare(
+          `
         select count(*) count from ${table} one join episodes e on e.id = one.episode_id
         where one.observed_at < e.started_at or one.observed_at > coalesce(e.ended_at, ${NOW}) or not exists (
           select 1 from stays s where s.patient_id = e.patient_id and s.unit_id = one.unit_id and s.started_at <= one.observed_at
-            and one.observed_at <= coalesce(s.ended_at, ${NOW}))`).get()
+            and one.observed_at <= coalesce(s.ended_at, ${NOW}))`,
+        )
+        .get()
       expect(outside, table).toEqual({ count: 0 })
     }
   })
   it('never lays two patients into one bed at a time', () => {
-    const shared = db.$client.prepare(`
+    const shared = db.$client
+      .prepare(
+        `
       select count(*) count from stays a join stays b on a.bed_id = b.bed_id and a.id < b.id
-      where a.started_at < coalesce(b.ended_at, ${NOW}) and b.started_at < coalesce(a.ended_at, ${NOW})`).get()
+      where a.started_at < coalesce(b.ended_at, ${NOW}) and b.started_at < coalesce(a.ended_at, ${NOW})`,
+      )
+      .get()
     expect(shared).toEqual({ count: 0 })
   })
   it('holds a corrected entry and late ones', () => {
     expect(db.$client.prepare('select count(*) count from settings where supersedes_id is not null').get()).toEqual({ count: 1 })
-    expect(db.$client.prepare('select count(*) > 10 as many from settings where recorded_at - observed_at > 1800000').get()).toEqual({ many: 1 })
+    expect(
+      db.$client.prepare('select count(*) > 10 as many from settings where recorded_at - observed_at > 1800000').get(),
+    ).toEqual({ many: 1 })
   })
   it('refuses to change an imported entry', () => {
     expect(() => db.$client.prepare(`update screens set note = 'x'`).run()).toThrow(/append-only/)
@@ -131,7 +189,16 @@ describe('filling the demo', () => {
 
   it('gives one sign-in for each role with the password asked for, and none to the other staff', async () => {
     const rows = db.select().from(account).all()
-    expect(filled.accounts.map(({ role }) => role).sort()).toEqual(['administrator', 'nurse', 'nurse', 'physician', 'physician', 'rt', 'rt', 'unit_lead'])
+    expect(filled.accounts.map(({ role }) => role).sort()).toEqual([
+      'administrator',
+      'nurse',
+      'nurse',
+      'physician',
+      'physician',
+      'rt',
+      'rt',
+      'unit_lead',
+    ])
     expect(rows).toHaveLength(filled.accounts.length)
     expect(db.select().from(user).all().length).toBeGreaterThanOrEqual(20)
     expect(await verifyPassword({ hash: rows[0]?.password ?? '', password: PASSWORD })).toBe(true)
@@ -154,7 +221,9 @@ describe('filling the demo', () => {
 describe('who may fill it', () => {
   it('is refused to a person and on a database with a hospital', async () => {
     const world = makeWorld()
-    await expect(fillDemo(makeCtx(world.db, world.administrator), { password: PASSWORD })).rejects.toMatchObject({ code: 'FORBIDDEN' })
+    await expect(fillDemo(makeCtx(world.db, world.administrator), { password: PASSWORD })).rejects.toMatchObject({
+      code: 'FORBIDDEN',
+    })
     await expect(fillDemo(asJob(world.db), { password: PASSWORD })).rejects.toMatchObject({ code: 'PRECONDITION' })
   })
   it('leaves nothing behind when it fails', async () => {
@@ -174,11 +243,17 @@ describe('the generator', () => {
   })
   it('fills a unit of any size with ventilated patients only, and keeps its history to the beds asked for', async () => {
     const db = openTestDatabase()
-    await fillDemo(asJob(db), { password: PASSWORD, historyDays: 30, units: [{ name: 'Large ICU', prefix: 'L', beds: 120, historyBeds: 4, isEveryBedVentilated: true }] })
+    await fillDemo(asJob(db), {
+      password: PASSWORD,
+      historyDays: 30,
+      units: [{ name: 'Large ICU', prefix: 'L', beds: 120, historyBeds: 4, isEveryBedVentilated: true }],
+    })
     const [unit] = db.select().from(units).all()
     const { counts, rows, emptyBeds } = listToday(asJob(db), { unitId: unit?.id ?? newId() })
     expect([counts.ventilated, rows.length, emptyBeds.length]).toEqual([120, 120, 0])
-    expect(db.$client.prepare('select count(distinct bed_id) beds from stays where ended_at is not null').get()).toEqual({ beds: 4 })
+    expect(db.$client.prepare('select count(distinct bed_id) beds from stays where ended_at is not null').get()).toEqual({
+      beds: 4,
+    })
   })
   it('runs through the clock change of a zone that has one', () => {
     const timeZone = 'America/Denver'
@@ -193,14 +268,23 @@ describe('the time zone of the demo', () => {
   it('shows a morning between 08:30 and 09:29, whenever the demo is filled', () => {
     for (let minute = 0; minute < 1440; minute += 7) {
       const nowMs = Date.UTC(2026, 11, 31, 0, minute)
-      const parts = new Intl.DateTimeFormat('en-GB', { timeZone: demoTimeZone(nowMs), hour: '2-digit', minute: '2-digit' }).format(nowMs)
+      const parts = new Intl.DateTimeFormat('en-GB', {
+        timeZone: demoTimeZone(nowMs),
+        hour: '2-digit',
+        minute: '2-digit',
+      }).format(nowMs)
       expect(parts >= '08:30' && parts <= '09:29', `${minute}: ${parts}`).toBe(true)
     }
   })
   it('ends the calendar of the demo with today', () => {
     const calendar = makeCalendar(NOW, demoTimeZone(NOW), 30)
     // 21:40 in Greenwich is 08:40 of the next day in the demo's zone.
-    expect([calendar.days.length, calendar.days[30], calendar.dayOf(NOW), calendar.dayAfterToday]).toEqual([31, '2026-11-18', '2026-11-18', '2026-11-19'])
+    expect([calendar.days.length, calendar.days[30], calendar.dayOf(NOW), calendar.dayAfterToday]).toEqual([
+      31,
+      '2026-11-18',
+      '2026-11-18',
+      '2026-11-19',
+    ])
   })
 })
 

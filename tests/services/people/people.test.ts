@@ -33,13 +33,16 @@ beforeEach(() => {
   const hospital = makeHospital(db)
   const { unit } = makeUnit(db, hospital.id)
   elsewhere = {
-    hospitalId: hospital.id, unitId: unit.id, person: makePerson(db, hospital.id, [{ unitId: unit.id, role: 'nurse' }]),
+    hospitalId: hospital.id,
+    unitId: unit.id,
+    person: makePerson(db, hospital.id, [{ unitId: unit.id, role: 'nurse' }]),
     administrator: makePerson(db, hospital.id, [], { isAdministrator: true }),
   }
   givePassword(elsewhere.administrator)
 })
 
-const givePassword = (person: TestPerson) => savePasswordHash(db, { id: newId(), personId: person.id, hash: 'salt:hash', now: NOW })
+const givePassword = (person: TestPerson) =>
+  savePasswordHash(db, { id: newId(), personId: person.id, hash: 'salt:hash', now: NOW })
 const asAdministrator = (now = NOW, key: string | null = null) => makeCtx(db, world.administrator, now, { idempotencyKey: key })
 const codeOf = (run: () => unknown): string => {
   try {
@@ -51,8 +54,11 @@ const codeOf = (run: () => unknown): string => {
 }
 const versionOf = (personId: string) => db.select().from(people).where(eq(people.id, personId)).get()?.version ?? 0
 const invitation = (over: Partial<InvitePersonInput> = {}): InvitePersonInput => ({
-  name: 'Sasha Newcomer', email: 'sasha@example.invalid', isAdministrator: false,
-  memberships: [{ unitId: world.medical.unit.id, role: 'nurse' }], ...over,
+  name: 'Sasha Newcomer',
+  email: 'sasha@example.invalid',
+  isAdministrator: false,
+  memberships: [{ unitId: world.medical.unit.id, role: 'nurse' }],
+  ...over,
 })
 const latestLink = () => {
   const mails = db.select().from(mailLedger).all()
@@ -60,8 +66,10 @@ const latestLink = () => {
   return new URL(url).searchParams.get('token') ?? ''
 }
 const counts = () => ({
-  users: db.select().from(user).all().length, people: db.select().from(people).all().length,
-  memberships: db.select().from(memberships).all().length, links: db.select().from(accountLinks).all().length,
+  users: db.select().from(user).all().length,
+  people: db.select().from(people).all().length,
+  memberships: db.select().from(memberships).all().length,
+  links: db.select().from(accountLinks).all().length,
   mails: db.select().from(mailLedger).all().length,
 })
 
@@ -79,7 +87,12 @@ describe('who may manage people', () => {
       expect(codeOf(() => verb(makeCtx(db, person)))).toBe('FORBIDDEN')
     }
     expect(counts()).toEqual(before)
-    expect(auditRows(db, 'access.denied').map((row) => row.actorId)).toEqual([world.rt.id, world.nurse.id, world.physician.id, world.lead.id])
+    expect(auditRows(db, 'access.denied').map((row) => row.actorId)).toEqual([
+      world.rt.id,
+      world.nurse.id,
+      world.physician.id,
+      world.lead.id,
+    ])
   })
 
   it('refuses jobs and the program itself', () => {
@@ -89,32 +102,52 @@ describe('who may manage people', () => {
 
   it('does not find people and units of another hospital', () => {
     const personId = elsewhere.person.id
-    expect(codeOf(() => setRoles(asAdministrator(), { personId, version: 1, isAdministrator: true, memberships: [] }))).toBe('NOT_FOUND')
+    expect(codeOf(() => setRoles(asAdministrator(), { personId, version: 1, isAdministrator: true, memberships: [] }))).toBe(
+      'NOT_FOUND',
+    )
     expect(codeOf(() => deactivatePerson(asAdministrator(), { personId, version: 1 }))).toBe('NOT_FOUND')
     expect(codeOf(() => reinvitePerson(asAdministrator(), { personId, version: 1 }))).toBe('NOT_FOUND')
     const wanted = [{ unitId: elsewhere.unitId, role: 'physician' as const }]
     const before = counts()
     expect(codeOf(() => invitePerson(asAdministrator(), invitation({ memberships: wanted })))).toBe('NOT_FOUND')
-    expect(codeOf(() => setRoles(asAdministrator(), { personId: world.nurse.id, version: 1, isAdministrator: false, memberships: wanted }))).toBe('NOT_FOUND')
+    expect(
+      codeOf(() =>
+        setRoles(asAdministrator(), { personId: world.nurse.id, version: 1, isAdministrator: false, memberships: wanted }),
+      ),
+    ).toBe('NOT_FOUND')
     expect(counts()).toEqual(before)
     expect(versionOf(world.nurse.id)).toBe(1)
   })
 
   it('lists the own hospital only, and nothing about any patient', () => {
     const text = JSON.stringify(listPeople(asAdministrator()))
-    for (const person of [world.rt, world.nurse, world.physician, world.lead, world.outsider, world.administrator]) expect(text).toContain(person.id)
+    for (const person of [world.rt, world.nurse, world.physician, world.lead, world.outsider, world.administrator])
+      expect(text).toContain(person.id)
     expect(text).not.toContain(elsewhere.person.id)
     expect(text).not.toContain(elsewhere.unitId)
-    for (const secret of [world.patient.familyName, world.patient.recordNumber, world.patient.id, world.episode.id]) expect(text).not.toContain(secret)
+    for (const secret of [world.patient.familyName, world.patient.recordNumber, world.patient.id, world.episode.id])
+      expect(text).not.toContain(secret)
   })
 })
 
 describe('inviting', () => {
   it('creates an account without a password, with its roles, a link for 7 days, a mail and an audit row', () => {
     const person = invitePerson(asAdministrator(), invitation())
-    expect(person).toMatchObject({ state: 'invited', invitationExpiresAt: NOW + 7 * DAY_MS, memberships: [{ unitName: 'Medical ICU', role: 'nurse' }] })
-    expect(db.select().from(mailLedger).all().map((mail) => [mail.kind, mail.recipient, mail.personId])).toEqual([['invitation', 'sasha@example.invalid', person.id]])
-    expect(auditRows(db, 'person.invite').map((row) => [row.actorId, row.subjectId])).toEqual([[world.administrator.id, person.id]])
+    expect(person).toMatchObject({
+      state: 'invited',
+      invitationExpiresAt: NOW + 7 * DAY_MS,
+      memberships: [{ unitName: 'Medical ICU', role: 'nurse' }],
+    })
+    expect(
+      db
+        .select()
+        .from(mailLedger)
+        .all()
+        .map((mail) => [mail.kind, mail.recipient, mail.personId]),
+    ).toEqual([['invitation', 'sasha@example.invalid', person.id]])
+    expect(auditRows(db, 'person.invite').map((row) => [row.actorId, row.subjectId])).toEqual([
+      [world.administrator.id, person.id],
+    ])
   })
 
   it('keeps only a hash of the link, and no address in the audit log', () => {
@@ -127,7 +160,9 @@ describe('inviting', () => {
     invitePerson(asAdministrator(), invitation())
     const before = counts()
     expect(codeOf(() => invitePerson(asAdministrator(), invitation({ name: 'Again' })))).toBe('INVALID')
-    expect(codeOf(() => invitePerson(makeCtx(db, elsewhere.administrator), invitation({ memberships: [], isAdministrator: true })))).toBe('INVALID')
+    expect(
+      codeOf(() => invitePerson(makeCtx(db, elsewhere.administrator), invitation({ memberships: [], isAdministrator: true }))),
+    ).toBe('INVALID')
     expect(counts()).toEqual(before)
   })
 
@@ -144,7 +179,10 @@ describe('inviting', () => {
     expect(parse({ name: '   ' }).success).toBe(false)
     expect(parse({ email: 'not an address' }).success).toBe(false)
     expect(parse({ email: ' Sasha@Example.Invalid ' }).data?.email).toBe('sasha@example.invalid')
-    const twice = [{ unitId: 'u', role: 'rt' }, { unitId: 'u', role: 'rt' }]
+    const twice = [
+      { unitId: 'u', role: 'rt' },
+      { unitId: 'u', role: 'rt' },
+    ]
     expect(parse({ memberships: twice }).data?.memberships).toHaveLength(1)
     expect(parse({ memberships: [{ unitId: 'u', role: 'administrator' }] }).success).toBe(false)
   })
@@ -152,12 +190,20 @@ describe('inviting', () => {
 
 describe('accepting an invitation', () => {
   const accept = (token: string, over: object = {}, now = NOW) =>
-    acceptLink(systemCtx(db, now), acceptLinkSchema.parse({ kind: 'invitation', token, password: 'a long enough sentence', ...over }))
+    acceptLink(
+      systemCtx(db, now),
+      acceptLinkSchema.parse({ kind: 'invitation', token, password: 'a long enough sentence', ...over }),
+    )
 
   it('sets the password, once, and the person becomes active', async () => {
     const person = invitePerson(asAdministrator(), invitation())
     const token = latestLink()
-    expect(readLink(token, db, NOW)).toEqual({ kind: 'invitation', name: 'Sasha Newcomer', email: 'sasha@example.invalid', hospitalName: world.hospital.name })
+    expect(readLink(token, db, NOW)).toEqual({
+      kind: 'invitation',
+      name: 'Sasha Newcomer',
+      email: 'sasha@example.invalid',
+      hospitalName: world.hospital.name,
+    })
     await accept(token)
     expect(await isPasswordOf(db, person.id, 'a long enough sentence')).toBe(true)
     expect(listPeople(asAdministrator()).people.find((one) => one.id === person.id)?.state).toBe('active')
@@ -196,16 +242,31 @@ describe('accepting an invitation', () => {
   })
 
   it('asks for at least 12 characters, five of them different', () => {
-    const parse = (password: string) => acceptLinkSchema.safeParse({ kind: 'invitation', token: 'x'.repeat(43), password }).success
-    expect([parse('elevenchars'), parse('twelve chars'), parse('aaaaaaaaaaaaaaaa'), parse('x'.repeat(124) + 'abcde')]).toEqual([false, true, false, false])
+    const parse = (password: string) =>
+      acceptLinkSchema.safeParse({ kind: 'invitation', token: 'x'.repeat(43), password }).success
+    expect([parse('elevenchars'), parse('twelve chars'), parse('aaaaaaaaaaaaaaaa'), parse('x'.repeat(124) + 'abcde')]).toEqual([
+      false,
+      true,
+      false,
+      false,
+    ])
   })
 })
 
 describe('the set-up of an empty database', () => {
   const setUp = (token: string, over: object = {}, now = NOW) =>
-    acceptLink(systemCtx(db, now), acceptLinkSchema.parse({
-      kind: 'setup', token, hospitalName: 'Invented Hospital', name: 'Avery First', email: 'avery@example.invalid', password: 'a long enough sentence', ...over,
-    }))
+    acceptLink(
+      systemCtx(db, now),
+      acceptLinkSchema.parse({
+        kind: 'setup',
+        token,
+        hospitalName: 'Invented Hospital',
+        name: 'Avery First',
+        email: 'avery@example.invalid',
+        password: 'a long enough sentence',
+        ...over,
+      }),
+    )
   const tokenOf = (url: string) => new URL(url).searchParams.get('token') ?? ''
 
   beforeEach(() => {
@@ -248,20 +309,51 @@ describe('the set-up of an empty database', () => {
 describe('setting roles', () => {
   it('ends roles that are taken, begins new ones, leaves the rest, and says so in the audit log', () => {
     const unitId = world.medical.unit.id
-    const wanted = [{ unitId, role: 'nurse' as const }, { unitId: world.surgical.unit.id, role: 'unit_lead' as const }]
-    setRoles(asAdministrator(), { personId: world.rt.id, version: 1, isAdministrator: false, memberships: [{ unitId, role: 'rt' }, ...wanted] })
-    const person = setRoles(asAdministrator(NOW + 1), { personId: world.rt.id, version: 2, isAdministrator: false, memberships: wanted })
-    expect(person.memberships.map((held) => `${held.unitName} ${held.role}`)).toEqual(['Medical ICU nurse', 'Surgical ICU unit_lead'])
+    const wanted = [
+      { unitId, role: 'nurse' as const },
+      { unitId: world.surgical.unit.id, role: 'unit_lead' as const },
+    ]
+    setRoles(asAdministrator(), {
+      personId: world.rt.id,
+      version: 1,
+      isAdministrator: false,
+      memberships: [{ unitId, role: 'rt' }, ...wanted],
+    })
+    const person = setRoles(asAdministrator(NOW + 1), {
+      personId: world.rt.id,
+      version: 2,
+      isAdministrator: false,
+      memberships: wanted,
+    })
+    expect(person.memberships.map((held) => `${held.unitName} ${held.role}`)).toEqual([
+      'Medical ICU nurse',
+      'Surgical ICU unit_lead',
+    ])
     const rows = db.select().from(memberships).where(eq(memberships.personId, world.rt.id)).all()
-    expect(rows.map((row) => [row.role, row.endedAt]).sort()).toEqual([['nurse', null], ['rt', NOW + 1], ['unit_lead', null]])
-    expect(auditRows(db, 'person.set_roles').at(-1)).toMatchObject({ subjectId: world.rt.id, before: { memberships: expect.any(Array) } })
+    expect(rows.map((row) => [row.role, row.endedAt]).sort()).toEqual([
+      ['nurse', null],
+      ['rt', NOW + 1],
+      ['unit_lead', null],
+    ])
+    expect(auditRows(db, 'person.set_roles').at(-1)).toMatchObject({
+      subjectId: world.rt.id,
+      before: { memberships: expect.any(Array) },
+    })
   })
 
   it('refuses a stale version and leaves everything as it was', () => {
     setRoles(asAdministrator(), { personId: world.rt.id, version: 1, isAdministrator: true, memberships: [] })
-    const late = { personId: world.rt.id, version: 1, isAdministrator: false, memberships: [{ unitId: world.medical.unit.id, role: 'physician' as const }] }
+    const late = {
+      personId: world.rt.id,
+      version: 1,
+      isAdministrator: false,
+      memberships: [{ unitId: world.medical.unit.id, role: 'physician' as const }],
+    }
     expect(codeOf(() => setRoles(asAdministrator(), late))).toBe('CONFLICT')
-    expect(listPeople(asAdministrator()).people.find((one) => one.id === world.rt.id)).toMatchObject({ isAdministrator: true, memberships: [] })
+    expect(listPeople(asAdministrator()).people.find((one) => one.id === world.rt.id)).toMatchObject({
+      isAdministrator: true,
+      memberships: [],
+    })
   })
 })
 
@@ -270,8 +362,13 @@ describe('the last administrator', () => {
     const { id } = world.administrator
     const memberships = [{ unitId: world.medical.unit.id, role: 'rt' as const }]
     expect(codeOf(() => deactivatePerson(asAdministrator(), { personId: id, version: 1 }))).toBe('PRECONDITION')
-    expect(codeOf(() => setRoles(asAdministrator(), { personId: id, version: 1, isAdministrator: false, memberships }))).toBe('PRECONDITION')
-    expect(listPeople(asAdministrator()).people.find((one) => one.id === id)).toMatchObject({ isAdministrator: true, state: 'active' })
+    expect(codeOf(() => setRoles(asAdministrator(), { personId: id, version: 1, isAdministrator: false, memberships }))).toBe(
+      'PRECONDITION',
+    )
+    expect(listPeople(asAdministrator()).people.find((one) => one.id === id)).toMatchObject({
+      isAdministrator: true,
+      state: 'active',
+    })
   })
 
   it('is not replaced by one who was only invited, who is deactivated, or who belongs to another hospital', () => {
@@ -279,7 +376,9 @@ describe('the last administrator', () => {
     const former = makePerson(db, world.hospital.id, [], { isAdministrator: true })
     givePassword(former)
     db.update(people).set({ deactivatedAt: NOW }).where(eq(people.id, former.id)).run()
-    expect(codeOf(() => deactivatePerson(asAdministrator(), { personId: world.administrator.id, version: 1 }))).toBe('PRECONDITION')
+    expect(codeOf(() => deactivatePerson(asAdministrator(), { personId: world.administrator.id, version: 1 }))).toBe(
+      'PRECONDITION',
+    )
   })
 
   it('may go once another one can sign in', () => {
@@ -297,15 +396,31 @@ describe('deactivating and coming back', () => {
     const kept = makeSession(db, world.rt.id)
     const person = deactivatePerson(asAdministrator(), { personId: world.nurse.id, version: 1 })
     expect(person).toMatchObject({ state: 'deactivated', memberships: [] })
-    expect(db.select().from(session).all().map((row) => row.id)).toEqual([kept.sessionId])
-    expect(db.select().from(sessionStates).all().map((row) => row.sessionId)).toEqual([kept.sessionId])
+    expect(
+      db
+        .select()
+        .from(session)
+        .all()
+        .map((row) => row.id),
+    ).toEqual([kept.sessionId])
+    expect(
+      db
+        .select()
+        .from(sessionStates)
+        .all()
+        .map((row) => row.sessionId),
+    ).toEqual([kept.sessionId])
     expect(auditRows(db, 'person.deactivate').map((row) => row.after)).toMatchObject([{ sessionsEnded: 2, state: 'deactivated' }])
     expect(codeOf(() => deactivatePerson(asAdministrator(), { personId: world.nurse.id, version: 2 }))).toBe('PRECONDITION')
-    expect(codeOf(() => setRoles(asAdministrator(), { personId: world.nurse.id, version: 2, isAdministrator: true, memberships: [] }))).toBe('PRECONDITION')
+    expect(
+      codeOf(() => setRoles(asAdministrator(), { personId: world.nurse.id, version: 2, isAdministrator: true, memberships: [] })),
+    ).toBe('PRECONDITION')
   })
 
   it('brings a person back without the old password, roles or administration', () => {
-    const second = makePerson(db, world.hospital.id, [{ unitId: world.medical.unit.id, role: 'physician' }], { isAdministrator: true })
+    const second = makePerson(db, world.hospital.id, [{ unitId: world.medical.unit.id, role: 'physician' }], {
+      isAdministrator: true,
+    })
     givePassword(second)
     deactivatePerson(asAdministrator(), { personId: second.id, version: 1 })
     const person = reinvitePerson(asAdministrator(), { personId: second.id, version: 2 })

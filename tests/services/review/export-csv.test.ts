@@ -21,7 +21,9 @@ describe('exporting a measure', () => {
     const review = readReview(makeCtx(world.db, world.lead), { unitId: world.medical.unit.id, from: '2026-01', to: undefined })
     expect(csv.fileName).toBe('utilisation-2026-01-to-2026-03.csv')
     expect(rows.slice(0, 4)).toEqual([
-      ['Month', 'Status', 'Ventilator days', 'Patient days', 'Ratio'], ['2026-01', 'final', '0', '0', ''], ['2026-02', 'final', '0', '1', '0.0000'],
+      ['Month', 'Status', 'Ventilator days', 'Patient days', 'Ratio'],
+      ['2026-01', 'final', '0', '0', ''],
+      ['2026-02', 'final', '0', '1', '0.0000'],
       ['2026-03', 'unfinished', '3', '3', '1.0000'],
     ])
     expect(review.months.map(({ patientDays }) => String(patientDays))).toEqual(rows.slice(1, 4).map((row) => row[3]))
@@ -45,7 +47,12 @@ describe('exporting a measure', () => {
     const { world } = exported('screens')
     const [row, ...others] = auditRows(world.db, 'review.export')
     expect(others).toEqual([])
-    expect(row).toMatchObject({ unitId: world.medical.unit.id, actorId: world.lead.id, at: NOW, after: { measure: 'screens', from: '2026-01', to: '2026-03' } })
+    expect(row).toMatchObject({
+      unitId: world.medical.unit.id,
+      actorId: world.lead.id,
+      at: NOW,
+      after: { measure: 'screens', from: '2026-01', to: '2026-03' },
+    })
   })
   it.each(['rt', 'nurse'] as const)('is refused to the %s and then leaves no export in the audit log', (role) => {
     const world = makeWorld()
@@ -72,7 +79,9 @@ describe('the routes', () => {
     expect(response.status).toBe(200)
     expect(response.headers.get('content-type')).toBe('text/csv; charset=utf-8')
     expect(response.headers.get('cache-control')).toBe('no-store')
-    expect(response.headers.get('content-disposition')).toMatch(/^attachment; filename="ventilator-days-\d{4}-\d{2}-to-\d{4}-\d{2}\.csv"$/)
+    expect(response.headers.get('content-disposition')).toMatch(
+      /^attachment; filename="ventilator-days-\d{4}-\d{2}-to-\d{4}-\d{2}\.csv"$/,
+    )
     expect([...new Uint8Array(await response.arrayBuffer()).slice(0, 3)]).toEqual([0xef, 0xbb, 0xbf])
   })
   it('send the months as JSON', async () => {
@@ -80,7 +89,10 @@ describe('the routes', () => {
     expect(((await response.json()) as { months: unknown[] }).months).toHaveLength(24)
   })
   it.each([
-    ['?measure=mortality', 422], ['', 422], ['?measure=screens&from=2026-13', 422], ['?measure=screens&from=2999-01&to=2999-02', 422],
+    ['?measure=mortality', 422],
+    ['', 422],
+    ['?measure=screens&from=2026-13', 422],
+    ['?measure=screens&from=2999-01&to=2999-02', 422],
   ])('refuse %s', async (query, status) => {
     expect((await asked(GET, query)).status).toBe(status)
   })

@@ -7,7 +7,19 @@ import { newId } from '@/lib/shared/ids'
 import { HOUR_MS, wallClockMs } from '@/lib/shared/time'
 import { defaultProtocol } from '@/lib/weaning/published/default-protocol'
 import type { ObservedReadings } from '@/lib/weaning/readings'
-import { auditRows, entryPlace, makeCtx, makeJobCtx, makePatient, makePerson, makeStay, makeUnit, makeWorld, NOW, TIME_ZONE } from '../../helpers/factories'
+import {
+  auditRows,
+  entryPlace,
+  makeCtx,
+  makeJobCtx,
+  makePatient,
+  makePerson,
+  makeStay,
+  makeUnit,
+  makeWorld,
+  NOW,
+  TIME_ZONE,
+} from '../../helpers/factories'
 
 type World = ReturnType<typeof makeWorld>
 const local = (day: string, time: string) => {
@@ -15,8 +27,17 @@ const local = (day: string, time: string) => {
   return wallClockMs(day, hours * 60 + minutes, TIME_ZONE)
 }
 const EMPTY_LOOK: ObservedReadings = {
-  breathsPerMin: 20, tidalVolumeMl: null, spo2Percent: 95, heartRatePerMin: 80, systolicMmHg: null, diastolicMmHg: null, rass: null, paCO2MmHg: null,
-  paO2MmHg: null, ph: null, signs: [],
+  breathsPerMin: 20,
+  tidalVolumeMl: null,
+  spo2Percent: 95,
+  heartRatePerMin: 80,
+  systolicMmHg: null,
+  diastolicMmHg: null,
+  rass: null,
+  paCO2MmHg: null,
+  paO2MmHg: null,
+  ph: null,
+  signs: [],
 }
 
 function addScreen(world: World, day: string, time: string, over: Partial<typeof screens.$inferInsert> = {}) {
@@ -26,13 +47,27 @@ function addScreen(world: World, day: string, time: string, over: Partial<typeof
 }
 function addTrial(world: World, day: string, outcome: 'passed' | 'failed' | 'stopped' | null) {
   const place = entryPlace(world.episode, world.place, local(day, '07:00'))
-  world.db.insert(trials).values({ ...place, technique: 't_piece', fio2Fraction: 0.4, plannedDurationMin: 30, baseline: EMPTY_LOOK }).run()
+  world.db
+    .insert(trials)
+    .values({ ...place, technique: 't_piece', fio2Fraction: 0.4, plannedDurationMin: 30, baseline: EMPTY_LOOK })
+    .run()
   if (outcome === null) return place
-  const end = { ...entryPlace(world.episode, world.place, local(day, '07:35')), trialId: place.entryId, outcome, rulesMet: [], returnedTo: 'as before' }
+  const end = {
+    ...entryPlace(world.episode, world.place, local(day, '07:35')),
+    trialId: place.entryId,
+    outcome,
+    rulesMet: [],
+    returnedTo: 'as before',
+  }
   world.db.insert(trialEnds).values(end).run()
   return { ...place, end }
 }
-function addEvent(world: World, event: typeof airwayEvents.$inferInsert.event, at: number, over: Partial<typeof airwayEvents.$inferInsert> = {}) {
+function addEvent(
+  world: World,
+  event: typeof airwayEvents.$inferInsert.event,
+  at: number,
+  over: Partial<typeof airwayEvents.$inferInsert> = {},
+) {
   const row = { ...entryPlace(world.episode, world.place, at), event, ...over }
   world.db.insert(airwayEvents).values(row).run()
   return row
@@ -69,9 +104,20 @@ describe('reading the review', () => {
   it('counts screens by their current version, and not the withdrawn ones', () => {
     const world = makeWorld()
     const incomplete = addScreen(world, '2026-03-01', '08:30', { result: 'incomplete' })
-    addScreen(world, '2026-03-01', '08:30', { entryId: incomplete.entryId, entryVersion: 2, supersedesId: incomplete.id, amendReason: 'completed' })
+    addScreen(world, '2026-03-01', '08:30', {
+      entryId: incomplete.entryId,
+      entryVersion: 2,
+      supersedesId: incomplete.id,
+      amendReason: 'completed',
+    })
     const taken = addScreen(world, '2026-03-02', '06:00', { result: 'ready' })
-    addScreen(world, '2026-03-02', '06:00', { entryId: taken.entryId, entryVersion: 2, supersedesId: taken.id, amendReason: 'wrong patient', isWithdrawn: true })
+    addScreen(world, '2026-03-02', '06:00', {
+      entryId: taken.entryId,
+      entryVersion: 2,
+      supersedesId: taken.id,
+      amendReason: 'wrong patient',
+      isWithdrawn: true,
+    })
     // 1 March done; 2 March not screened; today not yet due at 08:00.
     expect(month(world, '2026-03').screens).toMatchObject({ eligible: 2, done: 1, incomplete: 0, notYetDue: 1 })
     expect(month(world, '2026-03', { now: NOW + 2 * HOUR_MS }).screens).toMatchObject({ eligible: 3, done: 1, notYetDue: 0 })
@@ -79,11 +125,25 @@ describe('reading the review', () => {
 
   it('takes the screening window from the protocol in force that day', () => {
     const world = makeWorld()
-    world.db.insert(protocolVersions).values({
-      id: newId(), unitId: world.medical.unit.id, number: 2, content: { ...defaultProtocol, screeningWindow: { opensMin: 300, closesMin: 450 } },
-      note: 'Earlier', draftedAt: NOW, approvedAt: NOW, approvedBy: world.physician.id, startsAt: local('2026-03-02', '00:00'),
-    }).run()
-    const window = (day: string) => reviewDays(day, day, TIME_ZONE, [{ startsAt: 0, closesMin: 540 }, { startsAt: local('2026-03-02', '00:00'), closesMin: 450 }])[0]?.closesMs
+    world.db
+      .insert(protocolVersions)
+      .values({
+        id: newId(),
+        unitId: world.medical.unit.id,
+        number: 2,
+        content: { ...defaultProtocol, screeningWindow: { opensMin: 300, closesMin: 450 } },
+        note: 'Earlier',
+        draftedAt: NOW,
+        approvedAt: NOW,
+        approvedBy: world.physician.id,
+        startsAt: local('2026-03-02', '00:00'),
+      })
+      .run()
+    const window = (day: string) =>
+      reviewDays(day, day, TIME_ZONE, [
+        { startsAt: 0, closesMin: 540 },
+        { startsAt: local('2026-03-02', '00:00'), closesMin: 450 },
+      ])[0]?.closesMs
     expect([window('2026-03-01'), window('2026-03-02')]).toEqual([local('2026-03-01', '09:00'), local('2026-03-02', '07:30')])
     // At 08:00 today's window has closed under the new version.
     expect(month(world, '2026-03').screens).toMatchObject({ notYetDue: 0, eligible: 3 })
@@ -98,7 +158,8 @@ describe('reading the review', () => {
     makeStay(world.db, { patientId: world.patient.id, unitId: world.surgical.unit.id, bedId: bed.id, startedAt: moveMs })
     addScreen(world, '2026-03-02', '06:00')
     const outsider = makePerson(world.db, world.hospital.id, [{ unitId: world.surgical.unit.id, role: 'unit_lead' }])
-    const there = readReview(makeCtx(world.db, outsider), { unitId: world.surgical.unit.id, from: '2026-03', to: undefined }).months[0]
+    const there = readReview(makeCtx(world.db, outsider), { unitId: world.surgical.unit.id, from: '2026-03', to: undefined })
+      .months[0]
     expect(there).toMatchObject({ ventilatorDays: 2, patientDays: 2, screens: { eligible: 1, done: 1, notYetDue: 1 } })
     expect(month(world, '2026-03')).toMatchObject({ ventilatorDays: 1, patientDays: 1, screens: { eligible: 1, done: 0 } })
   })
@@ -109,9 +170,17 @@ describe('reading the review', () => {
     addTrial(world, '2026-03-02', null)
     const corrected = addTrial(world, '2026-03-03', 'passed')
     if (!('end' in corrected)) throw new Error('The trial has no end.')
-    world.db.insert(trialEnds).values({
-      ...corrected.end, id: newId(), entryVersion: 2, supersedesId: corrected.end.id, amendReason: 'rate was 38', outcome: 'failed',
-    }).run()
+    world.db
+      .insert(trialEnds)
+      .values({
+        ...corrected.end,
+        id: newId(),
+        entryVersion: 2,
+        supersedesId: corrected.end.id,
+        amendReason: 'rate was 38',
+        outcome: 'failed',
+      })
+      .run()
     expect(month(world, '2026-03').trials).toEqual({ started: 3, passed: 1, failed: 1, stopped: 0, running: 1 })
   })
 
@@ -119,9 +188,23 @@ describe('reading the review', () => {
     const world = makeWorld()
     const { end: _end, ...start } = { end: null, ...addTrial(world, '2026-03-01', 'failed') }
     const again = { technique: 't_piece' as const, fio2Fraction: 0.35, plannedDurationMin: 30, baseline: EMPTY_LOOK }
-    world.db.insert(trials).values({ ...start, ...again, id: newId(), entryVersion: 2, supersedesId: start.id, amendReason: 'FiO2 misread' }).run()
+    world.db
+      .insert(trials)
+      .values({ ...start, ...again, id: newId(), entryVersion: 2, supersedesId: start.id, amendReason: 'FiO2 misread' })
+      .run()
     const wrong = addTrial(world, '2026-03-02', 'passed')
-    world.db.insert(trials).values({ ...wrong, ...again, id: newId(), entryVersion: 2, supersedesId: wrong.id, amendReason: 'wrong patient', isWithdrawn: true }).run()
+    world.db
+      .insert(trials)
+      .values({
+        ...wrong,
+        ...again,
+        id: newId(),
+        entryVersion: 2,
+        supersedesId: wrong.id,
+        amendReason: 'wrong patient',
+        isWithdrawn: true,
+      })
+      .run()
     expect(month(world, '2026-03').trials).toEqual({ started: 1, passed: 0, failed: 1, stopped: 0, running: 0 })
   })
 
@@ -129,26 +212,51 @@ describe('reading the review', () => {
     const world = makeWorld()
     const extubatedMs = local('2026-02-10', '10:00')
     addEvent(world, 'extubated', extubatedMs)
-    const second = world.db.insert(episodes).values({
-      id: newId(), patientId: world.patient.id, startedAt: extubatedMs + 48 * HOUR_MS, start: 'reintubated', airway: 'endotracheal_tube', endedAt: extubatedMs + 60 * HOUR_MS,
-      end: 'extubated', recordedAt: NOW, recordedBy: world.rt.id,
-    }).returning().get()
-    world.db.insert(airwayEvents).values({ ...entryPlace(second, world.place, second.startedAt), event: 'reintubated' }).run()
+    const second = world.db
+      .insert(episodes)
+      .values({
+        id: newId(),
+        patientId: world.patient.id,
+        startedAt: extubatedMs + 48 * HOUR_MS,
+        start: 'reintubated',
+        airway: 'endotracheal_tube',
+        endedAt: extubatedMs + 60 * HOUR_MS,
+        end: 'extubated',
+        recordedAt: NOW,
+        recordedBy: world.rt.id,
+      })
+      .returning()
+      .get()
+    world.db
+      .insert(airwayEvents)
+      .values({ ...entryPlace(second, world.place, second.startedAt), event: 'reintubated' })
+      .run()
     expect(month(world, '2026-02').extubations).toMatchObject({
-      planned: 1, unplanned: 0, afterPlanned: { within48h: { known: 1, reintubated: 1 }, within7d: { known: 1, reintubated: 1 } },
+      planned: 1,
+      unplanned: 0,
+      afterPlanned: { within48h: { known: 1, reintubated: 1 }, within7d: { known: 1, reintubated: 1 } },
     })
   })
 
   it('counts an extubation of the last days as provisional', () => {
     const world = makeWorld()
     addEvent(world, 'extubated', NOW - 50 * HOUR_MS)
-    expect(month(world, '2026-03').extubations.afterPlanned).toMatchObject({ within48h: { known: 1, tooRecent: 0 }, within7d: { known: 0, tooRecent: 1 } })
+    expect(month(world, '2026-03').extubations.afterPlanned).toMatchObject({
+      within48h: { known: 1, tooRecent: 0 },
+      within7d: { known: 0, tooRecent: 1 },
+    })
   })
 
   it('does not count a withdrawn extubation', () => {
     const world = makeWorld()
     const event = addEvent(world, 'extubated', NOW - 20 * HOUR_MS)
-    addEvent(world, 'extubated', NOW - 20 * HOUR_MS, { entryId: event.entryId, entryVersion: 2, supersedesId: event.id, amendReason: 'did not happen', isWithdrawn: true })
+    addEvent(world, 'extubated', NOW - 20 * HOUR_MS, {
+      entryId: event.entryId,
+      entryVersion: 2,
+      supersedesId: event.id,
+      amendReason: 'did not happen',
+      isWithdrawn: true,
+    })
     expect(month(world, '2026-03').extubations.planned).toBe(0)
   })
 
@@ -164,12 +272,26 @@ describe('reading the review', () => {
     const [startedAt, endedAt] = [local(fromDay, fromTime), local(toDay, toTime)]
     const patient = makePatient(world.db, world.hospital.id, world.rt.id)
     makeStay(world.db, { patientId: patient.id, unitId: unit.id, bedId: bed.id, startedAt, endedAt, end: 'left_unit' })
-    world.db.insert(episodes).values({
-      id: newId(), patientId: patient.id, startedAt, start: 'intubated', airway: 'endotracheal_tube', endedAt, end: 'extubated', recordedAt: startedAt,
-      recordedBy: world.rt.id,
-    }).run()
+    world.db
+      .insert(episodes)
+      .values({
+        id: newId(),
+        patientId: patient.id,
+        startedAt,
+        start: 'intubated',
+        airway: 'endotracheal_tube',
+        endedAt,
+        end: 'extubated',
+        recordedAt: startedAt,
+        recordedBy: world.rt.id,
+      })
+      .run()
     const reader = makePerson(world.db, world.hospital.id, [{ unitId: unit.id, role: 'nurse' }])
-    const { months } = readReview(makeCtx(world.db, reader, local('2026-04-15', '12:00')), { unitId: unit.id, from: undefined, to: undefined })
+    const { months } = readReview(makeCtx(world.db, reader, local('2026-04-15', '12:00')), {
+      unitId: unit.id,
+      from: undefined,
+      to: undefined,
+    })
     const total = (of: 'ventilatorDays' | 'patientDays') => months.reduce((sum, one) => sum + one[of], 0)
     expect([total('ventilatorDays'), total('patientDays')]).toEqual([days, days])
   })
@@ -180,7 +302,9 @@ describe('reading the review', () => {
     const reader = makePerson(world.db, world.hospital.id, [{ unitId: unit.id, role: 'nurse' }])
     const { months } = readReview(makeCtx(world.db, reader), { unitId: unit.id, from: undefined, to: undefined })
     expect(months).toHaveLength(24)
-    expect(months.every(({ patientDays, ventilatorDays, screens: { eligible } }) => patientDays + ventilatorDays + eligible === 0)).toBe(true)
+    expect(
+      months.every(({ patientDays, ventilatorDays, screens: { eligible } }) => patientDays + ventilatorDays + eligible === 0),
+    ).toBe(true)
   })
 
   it('leaves a patient of 17 years out of the screens', () => {
@@ -205,30 +329,43 @@ describe('the months asked for', () => {
     expect((error as { fields: Record<string, string> }).fields[field]).toMatch(message)
   })
   it('count over the turn of the year and know leap years', () => {
-    expect([shiftMonth('2026-01', -1), shiftMonth('2025-12', 1), shiftMonth('2026-03', -23)]).toEqual(['2025-12', '2026-01', '2024-04'])
+    expect([shiftMonth('2026-01', -1), shiftMonth('2025-12', 1), shiftMonth('2026-03', -23)]).toEqual([
+      '2025-12',
+      '2026-01',
+      '2024-04',
+    ])
     expect([lastDayOf('2024-02'), lastDayOf('2026-02'), lastDayOf('2026-12')]).toEqual(['2024-02-29', '2026-02-28', '2026-12-31'])
   })
 })
 
 describe('who may read it', () => {
-  it.each(['rt', 'nurse', 'physician', 'lead'] as const)('lets the %s of the unit read, and says whether they may export', (role) => {
-    const world = makeWorld()
-    const review = readReview(makeCtx(world.db, world[role]), { unitId: world.medical.unit.id, from: undefined, to: undefined })
-    expect(review.mayExport).toBe(role === 'physician' || role === 'lead')
-  })
+  it.each(['rt', 'nurse', 'physician', 'lead'] as const)(
+    'lets the %s of the unit read, and says whether they may export',
+    (role) => {
+      const world = makeWorld()
+      const review = readReview(makeCtx(world.db, world[role]), { unitId: world.medical.unit.id, from: undefined, to: undefined })
+      expect(review.mayExport).toBe(role === 'physician' || role === 'lead')
+    },
+  )
   it.each(['outsider', 'administrator'] as const)('answers the %s with not found, and keeps the refusal', (who) => {
     const world = makeWorld()
-    const asked = () => readReview(makeCtx(world.db, world[who]), { unitId: world.medical.unit.id, from: undefined, to: undefined })
+    const asked = () =>
+      readReview(makeCtx(world.db, world[who]), { unitId: world.medical.unit.id, from: undefined, to: undefined })
     expect(captured(asked)).toMatchObject({ code: 'NOT_FOUND' })
     expect(auditRows(world.db, 'access.denied')).toHaveLength(1)
   })
   it('answers a job, for the weekly letter', () => {
     const world = makeWorld()
-    expect(readReview(makeJobCtx(world.db, 'mail.queue-due'), { unitId: world.medical.unit.id, from: '2026-03', to: undefined }).months).toHaveLength(1)
+    expect(
+      readReview(makeJobCtx(world.db, 'mail.queue-due'), { unitId: world.medical.unit.id, from: '2026-03', to: undefined })
+        .months,
+    ).toHaveLength(1)
   })
   it('names no patient', () => {
     const world = makeWorld()
-    expect(JSON.stringify(read(world))).not.toMatch(new RegExp(`${world.patient.familyName}|${world.patient.recordNumber}|${world.patient.id}`))
+    expect(JSON.stringify(read(world))).not.toMatch(
+      new RegExp(`${world.patient.familyName}|${world.patient.recordNumber}|${world.patient.id}`),
+    )
   })
 })
 

@@ -36,10 +36,23 @@ const refusalOf = (run: () => unknown): AppError | null => {
   }
 }
 const newUnit = (over: Partial<CreateUnitInput> = {}): CreateUnitInput => ({
-  name: 'Cardiac ICU', timeZone: 'America/Denver', altitudeM: 1450, barometricPressureMmHg: null, bedLabels: ['C01', 'C02'], ...over,
+  name: 'Cardiac ICU',
+  timeZone: 'America/Denver',
+  altitudeM: 1450,
+  barometricPressureMmHg: null,
+  bedLabels: ['C01', 'C02'],
+  ...over,
 })
 const changeOf = (unit: { id: string }, over: object = {}) => ({
-  unitId: unit.id, version: 1, name: 'Renamed', timeZone: 'America/Denver', altitudeM: 0, barometricPressureMmHg: null, dayTrackFromHour: 4, dayTrackToHour: 20, ...over,
+  unitId: unit.id,
+  version: 1,
+  name: 'Renamed',
+  timeZone: 'America/Denver',
+  altitudeM: 0,
+  barometricPressureMmHg: null,
+  dayTrackFromHour: 4,
+  dayTrackToHour: 20,
+  ...over,
 })
 
 describe('who may manage units and the hospital', () => {
@@ -71,7 +84,8 @@ describe('who may manage units and the hospital', () => {
   it('shows an administrator no patient and not which bed is taken', () => {
     const listed = listUnitsForAdmin(asAdministrator())
     const text = JSON.stringify(listed)
-    for (const secret of [world.patient.id, world.patient.familyName, world.patient.recordNumber, world.stay.id]) expect(text).not.toContain(secret)
+    for (const secret of [world.patient.id, world.patient.familyName, world.patient.recordNumber, world.stay.id])
+      expect(text).not.toContain(secret)
     const bedKeys = new Set(listed.units.flatMap((unit) => unit.beds).flatMap((bed) => Object.keys(bed)))
     expect([...bedKeys].sort()).toEqual(['id', 'isRetired', 'label'])
   })
@@ -86,7 +100,13 @@ describe('creating a unit', () => {
       { number: 1, isDefault: true, startsAt: NOW, draftedBy: null, approvedAt: null, content: defaultProtocol },
     ])
     expect(db.select().from(mailSchedules).where(eq(mailSchedules.unitId, unit.id)).all()).toEqual([
-      { unitId: unit.id, morningDueMin: defaultProtocol.screeningWindow.opensMin, isWindowEndOn: true, isDecisionOwedOn: true, version: 1 },
+      {
+        unitId: unit.id,
+        morningDueMin: defaultProtocol.screeningWindow.opensMin,
+        isWindowEndOn: true,
+        isDecisionOwedOn: true,
+        version: 1,
+      },
     ])
     expect(auditRows(db, 'unit.create').map((row) => [row.unitId, row.actorId])).toEqual([[unit.id, world.administrator.id]])
   })
@@ -111,16 +131,26 @@ describe('creating a unit', () => {
     expect(pathsOf({ barometricPressureMmHg: 640, altitudeM: 0, bedLabels: [] })).toBeUndefined()
   })
 
-  it.each(['UTC', 'America/Denver', 'Europe/Berlin', 'America/Argentina/Buenos_Aires', 'Asia/Kathmandu'])('knows the time zone %s', (zone) => {
-    expect(isTimeZone(zone)).toBe(true)
-  })
+  it.each(['UTC', 'America/Denver', 'Europe/Berlin', 'America/Argentina/Buenos_Aires', 'Asia/Kathmandu'])(
+    'knows the time zone %s',
+    (zone) => {
+      expect(isTimeZone(zone)).toBe(true)
+    },
+  )
 })
 
 describe('changing a unit', () => {
   it('changes name, place and day track, with before and after in the audit log', () => {
-    const unit = updateUnit(asAdministrator(), changeOf(world.surgical.unit, { altitudeM: 1450, barometricPressureMmHg: 642, dayTrackToHour: 22 }))
+    const unit = updateUnit(
+      asAdministrator(),
+      changeOf(world.surgical.unit, { altitudeM: 1450, barometricPressureMmHg: 642, dayTrackToHour: 22 }),
+    )
     expect(unit).toMatchObject({ name: 'Renamed', altitudeM: 1450, barometricPressureMmHg: 642, dayTrackToHour: 22, version: 2 })
-    expect(auditRows(db, 'unit.update')[0]).toMatchObject({ before: { name: 'Surgical ICU' }, after: { name: 'Renamed' }, unitId: world.surgical.unit.id })
+    expect(auditRows(db, 'unit.update')[0]).toMatchObject({
+      before: { name: 'Surgical ICU' },
+      after: { name: 'Renamed' },
+      unitId: world.surgical.unit.id,
+    })
   })
 
   it('refuses a stale version', () => {
@@ -132,12 +162,18 @@ describe('changing a unit', () => {
   it('keeps the time zone of a unit that has had a patient, and lets an unused one change it', () => {
     const used = refusalOf(() => updateUnit(asAdministrator(), changeOf(world.medical.unit, { timeZone: 'Europe/Berlin' })))
     expect(used?.fields).toHaveProperty('timeZone')
-    expect(updateUnit(asAdministrator(), changeOf(world.surgical.unit, { timeZone: 'Europe/Berlin' })).timeZone).toBe('Europe/Berlin')
+    expect(updateUnit(asAdministrator(), changeOf(world.surgical.unit, { timeZone: 'Europe/Berlin' })).timeZone).toBe(
+      'Europe/Berlin',
+    )
   })
 
   it('asks for a day track of at least four hours', () => {
     const parse = (over: object) => updateUnitSchema.safeParse(changeOf(world.medical.unit, over)).success
-    expect([parse({ dayTrackFromHour: 16, dayTrackToHour: 20 }), parse({ dayTrackFromHour: 17, dayTrackToHour: 20 }), parse({ dayTrackToHour: 25 })]).toEqual([true, false, false])
+    expect([
+      parse({ dayTrackFromHour: 16, dayTrackToHour: 20 }),
+      parse({ dayTrackFromHour: 17, dayTrackToHour: 20 }),
+      parse({ dayTrackToHour: 25 }),
+    ]).toEqual([true, false, false])
   })
 })
 
@@ -173,10 +209,15 @@ describe('beds', () => {
 
 describe('the hospital', () => {
   it('changes its name and idle lock, with an audit row; a stale version is refused', () => {
-    expect(updateHospital(asAdministrator(), { name: 'Renamed Hospital', idleLockMin: 5, version: 1 })).toMatchObject({ idleLockMin: 5, version: 2 })
+    expect(updateHospital(asAdministrator(), { name: 'Renamed Hospital', idleLockMin: 5, version: 1 })).toMatchObject({
+      idleLockMin: 5,
+      version: 2,
+    })
     expect(readHospital(asAdministrator())).toMatchObject({ name: 'Renamed Hospital', idleLockMin: 5 })
     expect(auditRows(db, 'hospital.update')[0]).toMatchObject({ before: { idleLockMin: 15 }, after: { idleLockMin: 5 } })
-    expect(refusalOf(() => updateHospital(asAdministrator(), { name: 'Late', idleLockMin: 9, version: 1 }))?.code).toBe('CONFLICT')
+    expect(refusalOf(() => updateHospital(asAdministrator(), { name: 'Late', idleLockMin: 9, version: 1 }))?.code).toBe(
+      'CONFLICT',
+    )
     expect(readHospital(asAdministrator()).name).toBe('Renamed Hospital')
   })
 

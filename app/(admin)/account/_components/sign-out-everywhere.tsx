@@ -14,7 +14,9 @@ export function SignOutEverywhere() {
   })
   return (
     <>
-      <p className="mb-3 max-w-reading">If you left a computer signed in, or think that somebody knows your password, end every session at once.</p>
+      <p className="mb-3 max-w-reading">
+        If you left a computer signed in, or think that somebody knows your password, end every session at once.
+      </p>
       <Button
         onClick={() => {
           if (!ending.isPending) ending.mutate()
@@ -22,7 +24,9 @@ export function SignOutEverywhere() {
       >
         Sign out everywhere
       </Button>
-      <div role="alert">{ending.isError ? <Notice tone="stop" title={failureMessage(ending.error)} className="mt-3" /> : null}</div>
+      <div role="alert">
+        {ending.isError ? <Notice tone="stop" title={failureMessage(ending.error)} className="mt-3" /> : null}
+      </div>
     </>
   )
 }

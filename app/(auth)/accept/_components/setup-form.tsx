@@ -27,7 +27,15 @@ export function SetupForm({ token }: { token: string }) {
       <FormErrorSummary control={form.control} submit={submit} />
       <TextField control={form.control} name="hospitalName" label="Hospital" maxLength={120} autoComplete="organization" />
       <TextField control={form.control} name="name" label="Your name" maxLength={120} autoComplete="name" />
-      <TextField control={form.control} name="email" label="Your e-mail address" type="email" inputMode="email" autoComplete="username" maxLength={254} />
+      <TextField
+        control={form.control}
+        name="email"
+        label="Your e-mail address"
+        type="email"
+        inputMode="email"
+        autoComplete="username"
+        maxLength={254}
+      />
       <PasswordField
         control={form.control}
         name="password"

@@ -19,7 +19,15 @@ export function ForgotPasswordForm() {
   return (
     <Form submit={submit} label="New password" className="flex flex-col gap-5">
       <FormErrorSummary control={form.control} submit={submit} />
-      <TextField control={form.control} name="email" label="E-mail address" type="email" inputMode="email" autoComplete="username" maxLength={254} />
+      <TextField
+        control={form.control}
+        name="email"
+        label="E-mail address"
+        type="email"
+        inputMode="email"
+        autoComplete="username"
+        maxLength={254}
+      />
       <div>
         <SubmitButton isSending={submit.isSending} sendingLabel="Asking…">
           Send me a link
@@ -28,8 +36,8 @@ export function ForgotPasswordForm() {
       <div role="status">
         {isAsked && !submit.failure ? (
           <Notice tone="calm" title="Asked for">
-            If this address has an account here, the mail is on its way. If nothing comes within a few minutes, look among unwanted mail or ask your
-            administrator.
+            If this address has an account here, the mail is on its way. If nothing comes within a few minutes, look among
+            unwanted mail or ask your administrator.
           </Notice>
         ) : null}
       </div>

@@ -23,7 +23,7 @@ export function ResetPasswordForm({ token }: { token: string }) {
     <Form submit={submit} label="Set a new password" className="flex flex-col gap-5">
       <FormErrorSummary control={form.control} submit={submit} />
       {submit.failure?.code === 'PRECONDITION' ? (
-        <Link href="/forgot-password" className="inline-flex min-h-[44px] items-center font-semibold">
+        <Link href="/forgot-password" className="inline-flex min-h-[44px] items-center underline font-semibold">
           Ask for a new link
         </Link>
       ) : null}

@@ -22,7 +22,15 @@ export function SignInForm({ next }: { next: string }) {
   return (
     <Form submit={submit} label="Sign in" className="flex flex-col gap-5">
       <FormErrorSummary control={form.control} submit={submit} />
-      <TextField control={form.control} name="email" label="E-mail address" type="email" inputMode="email" autoComplete="username" maxLength={254} />
+      <TextField
+        control={form.control}
+        name="email"
+        label="E-mail address"
+        type="email"
+        inputMode="email"
+        autoComplete="username"
+        maxLength={254}
+      />
       <PasswordField control={form.control} name="password" label="Password" autoComplete="current-password" />
       <div>
         <SubmitButton isSending={submit.isSending} sendingLabel="Signing in…">

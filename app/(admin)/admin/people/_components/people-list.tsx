@@ -58,29 +58,39 @@ export function PeopleList({ initial }: { initial: PeopleDto }) {
         empty="Nobody has an account yet."
       />
       <Dialog isOpen={isInviting} title="Invite a person" onClose={() => setInviting(false)} closeLabel="Close without inviting">
-        <InviteForm units={data.units} onInvited={(person) => finish(`Invitation for ${person.name} is on its way to ${person.email}.`)} />
+        <InviteForm
+          units={data.units}
+          onInvited={(person) => finish(`Invitation for ${person.name} is on its way to ${person.email}.`)}
+        />
       </Dialog>
-      <PersonDialog key={open ? `${open.id}-${open.version}` : 'none'} person={open} units={data.units} onClose={() => setOpenId(null)} onDone={finish} />
+      <PersonDialog
+        key={open ? `${open.id}-${open.version}` : 'none'}
+        person={open}
+        units={data.units}
+        onClose={() => setOpenId(null)}
+        onDone={finish}
+      />
     </>
   )
 }
 
 function columns(onChange: (person: PersonDto) => void): Column<PersonDto>[] {
   return [
-    { key: 'name', heading: 'Name', cell: (person) => person.name },
-    { key: 'email', heading: 'E-mail', cell: (person) => <span className="break-all">{person.email}</span> },
+    { key: 'name', heading: 'Name', cell: (person) => <NameCell person={person} onChange={() => onChange(person)} /> },
     { key: 'roles', heading: 'Roles', cell: (person) => <Roles person={person} /> },
     { key: 'state', heading: 'Account', cell: (person) => <State person={person} /> },
-    {
-      key: 'change',
-      heading: 'Change',
-      cell: (person) => (
-        <Button variant="quiet" className="-my-2 px-0" aria-label={`Change ${person.name}`} onClick={() => onChange(person)}>
-          Change
-        </Button>
-      ),
-    },
   ]
+}
+
+function NameCell({ person, onChange }: { person: PersonDto; onChange: () => void }) {
+  return (
+    <>
+      <Button variant="quiet" className="-mt-2.5 px-0 text-left" aria-label={`Change ${person.name}`} onClick={onChange}>
+        {person.name}
+      </Button>
+      <span className="block font-normal break-all text-muted">{person.email}</span>
+    </>
+  )
 }
 
 function Roles({ person }: { person: PersonDto }) {
@@ -101,9 +111,24 @@ function Roles({ person }: { person: PersonDto }) {
 const day = new Intl.DateTimeFormat('en-GB', { day: 'numeric', month: 'short', year: 'numeric', timeZone: 'UTC' })
 
 function State({ person }: { person: PersonDto }) {
-  if (person.state === 'active') return <Tag shape="tick" tone="calm">Active</Tag>
-  if (person.state === 'deactivated') return <Tag shape="dash" tone="muted">Deactivated</Tag>
-  if (person.invitationExpiresAt === null) return <Tag shape="late" tone="stop">Invitation has run out</Tag>
+  if (person.state === 'active')
+    return (
+      <Tag shape="tick" tone="calm">
+        Active
+      </Tag>
+    )
+  if (person.state === 'deactivated')
+    return (
+      <Tag shape="dash" tone="muted">
+        Deactivated
+      </Tag>
+    )
+  if (person.invitationExpiresAt === null)
+    return (
+      <Tag shape="late" tone="stop">
+        Invitation has run out
+      </Tag>
+    )
   return (
     <Tag shape="ring" tone="wait">
       Invited, link valid until {day.format(person.invitationExpiresAt)}

@@ -24,7 +24,10 @@ export function PersonDialog({ person, units, onClose, onDone }: PersonDialogPro
             <RolesForm person={person} units={units} onDone={() => onDone(`Roles of ${person.name} are changed.`)} />
           )}
           {person.state === 'active' ? null : (
-            <ReinviteForm person={person} onDone={() => onDone(`A new invitation for ${person.name} is on its way to ${person.email}.`)} />
+            <ReinviteForm
+              person={person}
+              onDone={() => onDone(`A new invitation for ${person.name} is on its way to ${person.email}.`)}
+            />
           )}
           {person.state === 'deactivated' ? null : (
             <DeactivateForm person={person} onDone={() => onDone(`${person.name} is deactivated and signed out everywhere.`)} />

@@ -11,8 +11,16 @@ import { reinvitePersonSchema, type PersonDto } from '@/lib/schemas/people'
 
 /** A new link for somebody who has no password yet, or who comes back after deactivation. */
 export function ReinviteForm({ person, onDone }: { person: PersonDto; onDone: () => void }) {
-  const form = useForm({ resolver: zodResolver(reinvitePersonSchema), defaultValues: { personId: person.id, version: person.version } })
-  const submit = useSubmit({ form, path: `/api/admin/people/${person.id}/reinvite`, invalidates: [adminKeys.root], onRecorded: onDone })
+  const form = useForm({
+    resolver: zodResolver(reinvitePersonSchema),
+    defaultValues: { personId: person.id, version: person.version },
+  })
+  const submit = useSubmit({
+    form,
+    path: `/api/admin/people/${person.id}/reinvite`,
+    invalidates: [adminKeys.root],
+    onRecorded: onDone,
+  })
   return (
     <Form submit={submit} label={`Invite ${person.name} again`} className="flex flex-col gap-3">
       <FormErrorSummary control={form.control} submit={submit} />

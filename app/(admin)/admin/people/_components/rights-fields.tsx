@@ -14,7 +14,10 @@ type RightsFieldsProps<Values extends Rights, Context, Output> = {
 }
 
 /** Roles in each unit, and whether the person administers the hospital. The form holds `memberships` and `isAdministrator`. */
-export function RightsFields<Values extends Rights, Context, Output>({ control, units }: RightsFieldsProps<Values, Context, Output>) {
+export function RightsFields<Values extends Rights, Context, Output>({
+  control,
+  units,
+}: RightsFieldsProps<Values, Context, Output>) {
   // The names below exist in every form that extends Rights; the form library cannot see that through the type parameter.
   const own = control as unknown as Control<Rights>
   const { ids, error, register, change } = useField({ control: own, name: 'memberships' })
@@ -27,7 +30,9 @@ export function RightsFields<Values extends Rights, Context, Output>({ control, 
 
   return (
     <div className="flex flex-col gap-4">
-      {units.length === 0 ? <p className="text-muted">There is no unit yet, so no role in one can be given. Add a unit first.</p> : null}
+      {units.length === 0 ? (
+        <p className="text-muted">There is no unit yet, so no role in one can be given. Add a unit first.</p>
+      ) : null}
       {units.map((unit, at) => (
         <UnitRoles
           key={unit.id}
@@ -40,7 +45,11 @@ export function RightsFields<Values extends Rights, Context, Output>({ control, 
         />
       ))}
       <FieldError id={ids.error} message={error} />
-      <CheckField control={own} name="isAdministrator" label="Administrator: people, units and sign-in rules. Gives no sight of patients." />
+      <CheckField
+        control={own}
+        name="isAdministrator"
+        label="Administrator: people, units and sign-in rules. Gives no sight of patients."
+      />
     </div>
   )
 }

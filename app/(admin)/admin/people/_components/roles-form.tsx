@@ -21,7 +21,12 @@ export function RolesForm({ person, units, onDone }: { person: PersonDto; units:
       memberships: person.memberships.map(({ unitId, role }) => ({ unitId, role })),
     },
   })
-  const submit = useSubmit({ form, path: `/api/admin/people/${person.id}/roles`, invalidates: [adminKeys.root], onRecorded: onDone })
+  const submit = useSubmit({
+    form,
+    path: `/api/admin/people/${person.id}/roles`,
+    invalidates: [adminKeys.root],
+    onRecorded: onDone,
+  })
   return (
     <Form submit={submit} label={`Roles of ${person.name}`} className="flex flex-col gap-5">
       <FormErrorSummary control={form.control} submit={submit} />

@@ -13,7 +13,12 @@ import { BedLabelsField } from './bed-labels-field'
 /** More beds for a unit; the label of a bed out of use brings that bed back. */
 export function AddBedsForm({ unitId }: { unitId: string }) {
   const form = useForm({ resolver: zodResolver(addBedsSchema), defaultValues: { unitId, bedLabels: [] } })
-  const submit = useSubmit({ form, path: `/api/admin/units/${unitId}/beds`, invalidates: [adminKeys.root], onRecorded: () => form.reset() })
+  const submit = useSubmit({
+    form,
+    path: `/api/admin/units/${unitId}/beds`,
+    invalidates: [adminKeys.root],
+    onRecorded: () => form.reset(),
+  })
   return (
     <Form submit={submit} label="Add beds" className="flex flex-col gap-5">
       <FormErrorSummary control={form.control} submit={submit} />

@@ -10,15 +10,24 @@ import { readBedLabels } from './read-bed-labels'
 type WithLabels = { bedLabels: string[] }
 
 /** Bed labels as one line of text; the form holds the list. What was understood is said below while typing. */
-export function BedLabelsField<Values extends WithLabels, Context, Output>({ control }: { control: Control<Values, Context, Output> }) {
+export function BedLabelsField<Values extends WithLabels, Context, Output>({
+  control,
+}: {
+  control: Control<Values, Context, Output>
+}) {
   // The name exists in every form that extends WithLabels; the form library cannot see that through the type parameter.
-  const { ids, path, value, error, register, change, blur } = useField({ control: control as unknown as Control<WithLabels>, name: 'bedLabels' })
+  const { ids, path, value, error, register, change, blur } = useField({
+    control: control as unknown as Control<WithLabels>,
+    name: 'bedLabels',
+  })
   const labels = Array.isArray(value) ? value.map(String) : []
   const [text, setText] = useState(labels.join(', '))
   const hint = (
     <>
       Separated by commas: M01, M02. A row is written M01..M16.{' '}
-      <span role="status">{labels.length === 0 ? '' : `${labels.length} ${labels.length === 1 ? 'bed' : 'beds'}: ${labels.join(', ')}`}</span>
+      <span role="status">
+        {labels.length === 0 ? '' : `${labels.length} ${labels.length === 1 ? 'bed' : 'beds'}: ${labels.join(', ')}`}
+      </span>
     </>
   )
   return (

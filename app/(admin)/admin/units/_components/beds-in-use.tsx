@@ -13,7 +13,8 @@ export function BedsInUse({ unit }: { unit: UnitAdminDto }) {
   const queries = useQueryClient()
   const [message, setMessage] = useState<{ text: string; isProblem: boolean }>({ text: '', isProblem: false })
   const retiring = useMutation({
-    mutationFn: (bed: { id: string; label: string }) => apiPost(`/api/admin/beds/${bed.id}/retire`, {}, { idempotencyKey: newId() }),
+    mutationFn: (bed: { id: string; label: string }) =>
+      apiPost(`/api/admin/beds/${bed.id}/retire`, {}, { idempotencyKey: newId() }),
     onSuccess: async (_answer, bed) => {
       await queries.invalidateQueries({ queryKey: adminKeys.root })
       setMessage({ text: `Bed ${bed.label} is out of use. Adding its label brings it back.`, isProblem: false })
@@ -45,7 +46,9 @@ export function BedsInUse({ unit }: { unit: UnitAdminDto }) {
           </li>
         ))}
       </ul>
-      {retired.length > 0 ? <p className="mt-3 text-sm text-muted">Out of use: {retired.map((bed) => bed.label).join(', ')}</p> : null}
+      {retired.length > 0 ? (
+        <p className="mt-3 text-sm text-muted">Out of use: {retired.map((bed) => bed.label).join(', ')}</p>
+      ) : null}
     </section>
   )
 }

@@ -28,9 +28,21 @@ function CreateUnitForm({ onDone }: { onDone: (unit: UnitAdminDto) => void }) {
     <Form submit={submit} label="Add a unit" className="flex flex-col gap-5">
       <FormErrorSummary control={form.control} submit={submit} />
       <TextField control={form.control} name="name" label="Name" maxLength={80} />
-      <SelectField control={form.control} name="timeZone" label="Time zone" options={timeZones()} hint="Fixed once the unit has had a patient." />
+      <SelectField
+        control={form.control}
+        name="timeZone"
+        label="Time zone"
+        options={timeZones()}
+        hint="Fixed once the unit has had a patient."
+      />
       <NumberField control={form.control} name="altitudeM" label="Altitude" unit="m" isSigned hint={ALTITUDE_HINT} />
-      <NumberField control={form.control} name="barometricPressureMmHg" label="Barometer reading" unit="mmHg" hint={BAROMETER_HINT} />
+      <NumberField
+        control={form.control}
+        name="barometricPressureMmHg"
+        label="Barometer reading"
+        unit="mmHg"
+        hint={BAROMETER_HINT}
+      />
       <BedLabelsField control={form.control} />
       <div>
         <SubmitButton isSending={submit.isSending} sendingLabel="Adding…">
@@ -49,9 +61,21 @@ function ChangeUnitForm({ unit, onDone }: { unit: UnitAdminDto; onDone: (unit: U
     <Form submit={submit} label={`Change ${unit.name}`} className="flex flex-col gap-5">
       <FormErrorSummary control={form.control} submit={submit} />
       <TextField control={form.control} name="name" label="Name" maxLength={80} />
-      <SelectField control={form.control} name="timeZone" label="Time zone" options={timeZones(unit.timeZone)} hint="Fixed once the unit has had a patient." />
+      <SelectField
+        control={form.control}
+        name="timeZone"
+        label="Time zone"
+        options={timeZones(unit.timeZone)}
+        hint="Fixed once the unit has had a patient."
+      />
       <NumberField control={form.control} name="altitudeM" label="Altitude" unit="m" isSigned hint={ALTITUDE_HINT} />
-      <NumberField control={form.control} name="barometricPressureMmHg" label="Barometer reading" unit="mmHg" hint={BAROMETER_HINT} />
+      <NumberField
+        control={form.control}
+        name="barometricPressureMmHg"
+        label="Barometer reading"
+        unit="mmHg"
+        hint={BAROMETER_HINT}
+      />
       <div className="flex flex-wrap gap-5">
         <NumberField control={form.control} name="dayTrackFromHour" label="Day track from" unit="o’clock" digits={3} isWhole />
         <NumberField control={form.control} name="dayTrackToHour" label="Day track to" unit="o’clock" digits={3} isWhole />

@@ -43,7 +43,9 @@ export function UnitList({ initial }: { initial: { units: UnitAdminDto[] } }) {
       <p role="status" className="mb-4 font-semibold text-calm">
         {message}
       </p>
-      {data.units.length === 0 ? <p className="py-6 text-muted">No unit yet. Add the first one, then invite its people.</p> : null}
+      {data.units.length === 0 ? (
+        <p className="py-6 text-muted">No unit yet. Add the first one, then invite its people.</p>
+      ) : null}
       <ul>
         {data.units.map((unit) => (
           <li key={unit.id} className="border-t border-line py-5">
@@ -62,10 +64,19 @@ export function UnitList({ initial }: { initial: { units: UnitAdminDto[] } }) {
       <Dialog isOpen={open?.kind === 'create'} title="Add a unit" onClose={() => setOpen(null)} closeLabel="Close without adding">
         <UnitForm unit={null} onDone={(unit) => finish(`${unit.name} is added.`)} />
       </Dialog>
-      <Dialog isOpen={open?.kind === 'edit' && chosen !== null} title={`Change ${chosen?.name ?? ''}`} onClose={() => setOpen(null)} closeLabel="Close without changing">
+      <Dialog
+        isOpen={open?.kind === 'edit' && chosen !== null}
+        title={`Change ${chosen?.name ?? ''}`}
+        onClose={() => setOpen(null)}
+        closeLabel="Close without changing"
+      >
         {chosen ? <UnitForm key={chosen.version} unit={chosen} onDone={(unit) => finish(`${unit.name} is changed.`)} /> : null}
       </Dialog>
-      <Dialog isOpen={open?.kind === 'beds' && chosen !== null} title={`Beds of ${chosen?.name ?? ''}`} onClose={() => setOpen(null)}>
+      <Dialog
+        isOpen={open?.kind === 'beds' && chosen !== null}
+        title={`Beds of ${chosen?.name ?? ''}`}
+        onClose={() => setOpen(null)}
+      >
         {chosen ? (
           <div className="flex flex-col gap-8">
             <AddBedsForm key={chosen.beds.length} unitId={chosen.id} />
@@ -87,7 +98,9 @@ function UnitSummary({ unit }: { unit: UnitAdminDto }) {
         {unit.timeZone}, {unit.altitudeM} m{pressure}
       </p>
       <p className="text-muted">
-        {beds.length === 0 ? 'No beds yet.' : `${beds.length} ${beds.length === 1 ? 'bed' : 'beds'}: ${beds.map((bed) => bed.label).join(', ')}`}
+        {beds.length === 0
+          ? 'No beds yet.'
+          : `${beds.length} ${beds.length === 1 ? 'bed' : 'beds'}: ${beds.map((bed) => bed.label).join(', ')}`}
       </p>
     </>
   )

@@ -1,5 +1,5 @@
 import type { Metadata } from 'next'
-import { AirwayPage } from '@/components/episodes/airway-form'
+import { AirwayPage } from '@/components/airway/airway-page'
 import { readForPage } from '@/lib/server/read-for-page'
 import { pageCtx } from '@/lib/server/session'
 import { readAirwayForm } from '@/lib/services/airway/read-form'
@@ -11,5 +11,5 @@ export default async function Page({ params, searchParams }: PageProps<'/episode
   const { episodeId } = await params
   const amend = oneParam(await searchParams, 'amend')
   const ctx = await pageCtx()
-  return <AirwayPage initial={readForPage(() => readAirwayForm(ctx, { episodeId, ...(amend === null ? {} : { amend }) }))} />
+  return <AirwayPage dto={readForPage(() => readAirwayForm(ctx, { episodeId, ...(amend === null ? {} : { amend }) }))} />
 }

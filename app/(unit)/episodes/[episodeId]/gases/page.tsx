@@ -1,5 +1,5 @@
 import type { Metadata } from 'next'
-import { GasPage } from '@/components/episodes/gas-form'
+import { GasPage } from '@/components/gases/gas-page'
 import { readForPage } from '@/lib/server/read-for-page'
 import { pageCtx } from '@/lib/server/session'
 import { readGasForm } from '@/lib/services/gases/read-form'
@@ -11,5 +11,5 @@ export default async function Page({ params, searchParams }: PageProps<'/episode
   const { episodeId } = await params
   const amend = oneParam(await searchParams, 'amend')
   const ctx = await pageCtx()
-  return <GasPage initial={readForPage(() => readGasForm(ctx, { episodeId, ...(amend === null ? {} : { amend }) }))} />
+  return <GasPage dto={readForPage(() => readGasForm(ctx, { episodeId, ...(amend === null ? {} : { amend }) }))} />
 }

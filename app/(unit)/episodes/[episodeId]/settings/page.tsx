@@ -1,5 +1,5 @@
 import type { Metadata } from 'next'
-import { SettingsPage } from '@/components/episodes/settings-form'
+import { SettingsPage } from '@/components/settings/settings-page'
 import { readForPage } from '@/lib/server/read-for-page'
 import { pageCtx } from '@/lib/server/session'
 import { readSettingsForm } from '@/lib/services/settings/read-form'
@@ -11,5 +11,5 @@ export default async function Page({ params, searchParams }: PageProps<'/episode
   const { episodeId } = await params
   const amend = oneParam(await searchParams, 'amend')
   const ctx = await pageCtx()
-  return <SettingsPage initial={readForPage(() => readSettingsForm(ctx, { episodeId, ...(amend === null ? {} : { amend }) }))} />
+  return <SettingsPage dto={readForPage(() => readSettingsForm(ctx, { episodeId, ...(amend === null ? {} : { amend }) }))} />
 }

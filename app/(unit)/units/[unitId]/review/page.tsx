@@ -9,7 +9,13 @@ export const metadata: Metadata = { title: 'Review' }
 
 type Search = Record<string, string | string[] | undefined>
 
-export default async function Page({ params, searchParams }: { params: Promise<{ unitId: string }>; searchParams: Promise<Search> }) {
+export default async function Page({
+  params,
+  searchParams,
+}: {
+  params: Promise<{ unitId: string }>
+  searchParams: Promise<Search>
+}) {
   const { unitId } = await params
   const search = await searchParams
   const asked = { from: one(search.from), to: one(search.to) }
@@ -20,7 +26,11 @@ export default async function Page({ params, searchParams }: { params: Promise<{
     return <ReviewPage review={null} asked={asked} errors={errors} />
   }
   const answer = readForPage(() => readReviewOrRefusal(ctx, parsed.data))
-  return answer.review ? <ReviewPage review={answer.review} /> : <ReviewPage review={null} asked={asked} errors={answer.refused} />
+  return answer.review ? (
+    <ReviewPage review={answer.review} />
+  ) : (
+    <ReviewPage review={null} asked={asked} errors={answer.refused} />
+  )
 }
 
 /** A parameter given once; one given twice counts as not given. */
