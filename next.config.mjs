@@ -21,7 +21,7 @@ const fixedHeaders = [
   { key: 'Cross-Origin-Resource-Policy', value: 'same-origin' },
   {
     key: 'Permissions-Policy',
-    value: 'camera=(), microphone=(), geolocation=(), payment=(), usb=(), bluetooth=(), browsing-topics=()',
+    value: 'camera=(), microphone=(), geolocation=(), payment=(), usb=()',
   },
   { key: 'X-Robots-Tag', value: 'noindex, nofollow' },
 ]

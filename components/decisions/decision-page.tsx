@@ -46,7 +46,7 @@ export function DecisionPage({ initial, amend }: { initial: DecisionFormDto; ame
       ) : null}
       <Evidence dto={dto} nowMs={nowMs} />
       <MissingEvidence missing={dto.missing} />
-      <p className="text-muted">Daybreath computes and keeps the record; the physician decides.</p>
+      <p className="mt-6 text-muted">Daybreath computes and keeps the record; the physician decides.</p>
       {showsForm ? (
         <DecisionForm
           dto={shown}

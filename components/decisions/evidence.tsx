@@ -55,7 +55,7 @@ export function Evidence({ dto, nowMs }: Props) {
       {trial ? (
         <div className="mt-6 flex flex-col gap-6">
           <RateChart trial={trial} rules={dto.protocol.content.trial.stopRules} untilMs={trial.end?.observedAt ?? nowMs} isRunning={trial.end === null} />
-          <ObservationTable rows={trial.observations} caption="Observations of the trial" timeZone={patient.timeZone} nowMs={nowMs} amendBase={null} />
+          <ObservationTable rows={trial.observations} caption="Observations of the trial" timeZone={patient.timeZone} nowMs={nowMs} />
         </div>
       ) : null}
     </section>

@@ -1,4 +1,3 @@
-import Link from 'next/link'
 import { DataTable, type Column } from '@/components/ui/data-table'
 import { Tag } from '@/components/ui/tag'
 import { clockTime } from '@/lib/client/wall-clock'
@@ -14,15 +13,15 @@ type Row = EntryDto & { readings: ObservedReadings; minute?: number; opensEyesTo
 
 const NUMBERS = ['breathsPerMin', 'tidalVolumeMl', 'spo2Percent', 'heartRatePerMin', 'rass'] as const satisfies readonly LimitedReading[]
 
-type ObservationTableProps = { rows: readonly Row[]; caption: string; timeZone: string; nowMs: number; amendBase: string | null }
+type ObservationTableProps = { rows: readonly Row[]; caption: string; timeZone: string; nowMs: number }
 
-/** Every observation, latest first, with both marks and a way to correct it. */
-export function ObservationTable({ rows, caption, timeZone, nowMs, amendBase }: ObservationTableProps) {
+/** Every observation, latest first. They are corrected from the patient's page, which knows what the reader may correct. */
+export function ObservationTable({ rows, caption, timeZone, nowMs }: ObservationTableProps) {
   const hasMinute = rows.some((row) => row.minute !== undefined)
   const columns: Column<Row>[] = [
     { key: 'time', heading: 'Observed', cell: (row) => <span className="figure">{clockTime(row.observedAt, timeZone, nowMs)}</span> },
     ...(hasMinute ? [{ key: 'minute', heading: 'Minute', isNumeric: true, cell: (row: Row) => row.minute ?? '' }] : []),
-    ...NUMBERS.map((reading): Column<Row> => ({
+    ...NUMBERS.filter((reading) => rows.some((row) => row.readings[reading] !== null)).map((reading): Column<Row> => ({
       key: reading,
       heading: [readingLabel(reading), readingUnit(reading)].filter(Boolean).join(', '),
       isNumeric: true,
@@ -33,7 +32,7 @@ export function ObservationTable({ rows, caption, timeZone, nowMs, amendBase }: 
     })),
     { key: 'bp', heading: 'Blood pressure, mmHg', isNumeric: true, cell: (row) => bloodPressureText(row.readings) ?? <NotObserved /> },
     { key: 'signs', heading: 'Signs', cell: (row) => signsText(row) },
-    { key: 'by', heading: 'Recorded by', cell: (row) => <RecordedBy row={row} timeZone={timeZone} nowMs={nowMs} amendBase={amendBase} /> },
+    { key: 'by', heading: 'Recorded by', cell: (row) => <RecordedBy row={row} timeZone={timeZone} nowMs={nowMs} /> },
   ]
   return <DataTable caption={caption} columns={columns} rows={[...rows].reverse()} rowKey={(row) => row.id} empty="No observation yet." />
 }
@@ -52,7 +51,7 @@ function signsText(row: Row): string {
   return [...eyes, ...(signs.length > 0 ? signs : ['no sign marked'])].join(', ')
 }
 
-function RecordedBy({ row, timeZone, nowMs, amendBase }: { row: Row; timeZone: string; nowMs: number; amendBase: string | null }) {
+function RecordedBy({ row, timeZone, nowMs }: { row: Row; timeZone: string; nowMs: number }) {
   const unlikely = unlikelyNames(row.unlikely)
   return (
     <span className="flex flex-col">
@@ -60,11 +59,6 @@ function RecordedBy({ row, timeZone, nowMs, amendBase }: { row: Row; timeZone: s
       {row.isLate ? <Tag shape="late" tone="muted" className="text-sm">late entry, {clockTime(row.recordedAt, timeZone, nowMs)}</Tag> : null}
       {row.isAmended ? <Tag shape="info" tone="ink" className="text-sm">corrected</Tag> : null}
       {unlikely.length > 0 ? <Tag shape="late" tone="stop" className="text-sm">unusual: {unlikely.join(', ')}</Tag> : null}
-      {amendBase === null ? null : (
-        <Link href={`${amendBase}?amend=${encodeURIComponent(row.id)}`} className="inline-flex min-h-[44px] items-center text-sm" aria-label={`Correct the observation of ${clockTime(row.observedAt, timeZone, nowMs)}`}>
-          Correct
-        </Link>
-      )}
     </span>
   )
 }

@@ -42,7 +42,7 @@ export function RunningHold({ dto, hold, nowMs }: RunningHoldProps) {
           <HoldEndForm key={ending} dto={dto} holdId={hold.entryId} hold={hold} outcome={ending} amending={null} nowMs={nowMs} onBack={() => setEnding(null)} />
         )
       ) : null}
-      <ObservationTable rows={hold.observations} caption="Observations of this hold" timeZone={timeZone} nowMs={nowMs} amendBase={dto.may.observe ? `/episodes/${dto.patient.episodeId}/hold` : null} />
+      <ObservationTable rows={hold.observations} caption="Observations of this hold" timeZone={timeZone} nowMs={nowMs} />
     </div>
   )
 }

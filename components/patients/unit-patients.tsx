@@ -23,7 +23,7 @@ export function UnitPatients({ initial, mayBegin }: { initial: PatientListDto; m
       key: 'name',
       heading: 'Patient',
       cell: (each) => (
-        <Link href={`/patients/${each.patientId}`} prefetch={false} className="inline-flex min-h-[44px] items-center font-semibold">
+        <Link href={`/patients/${each.patientId}`} prefetch={false} className="-my-2.5 inline-flex min-h-[44px] items-center font-semibold">
           {each.familyName}, {each.givenName}
         </Link>
       ),
@@ -64,7 +64,7 @@ function Ventilation({ patient, list, mayBegin }: { patient: UnitPatientDto; lis
   return (
     <span className="flex flex-wrap items-center gap-x-3">
       <span className="text-muted">{lastEndedAt === null ? 'not ventilated' : `ended ${clockTime(lastEndedAt, list.unit.timeZone, list.nowMs)}`}</span>
-      {mayBegin ? <Link href={`/patients/${patient.patientId}/begin`} prefetch={false} className="inline-flex min-h-[44px] items-center">Begin ventilation</Link> : null}
+      {mayBegin ? <Link href={`/patients/${patient.patientId}/begin`} prefetch={false} className="-my-2.5 inline-flex min-h-[44px] items-center">Begin ventilation</Link> : null}
     </span>
   )
 }

@@ -10,10 +10,10 @@ import { RateChart } from './rate-chart'
 import { techniqueText } from './technique-text'
 import { trialLook } from './trial-look'
 
-type Props = { trial: TrialDto; rules: readonly StopRule[]; timeZone: string; nowMs: number; amendBase: string | null }
+type Props = { trial: TrialDto; rules: readonly StopRule[]; timeZone: string; nowMs: number }
 
 /** A trial that has ended: outcome, what ended it, and every observation. */
-export function EndedTrial({ trial, rules, timeZone, nowMs, amendBase }: Props) {
+export function EndedTrial({ trial, rules, timeZone, nowMs }: Props) {
   const { end } = trial
   if (end === null) return null
   const look = trialLook(end.outcome)
@@ -35,7 +35,7 @@ export function EndedTrial({ trial, rules, timeZone, nowMs, amendBase }: Props) 
         <summary className="min-h-[44px] cursor-pointer py-2.5 underline decoration-line decoration-2 underline-offset-4">{trial.observations.length} {trial.observations.length === 1 ? 'observation' : 'observations'}</summary>
         <div className="flex flex-col gap-6 pt-3">
           <RateChart trial={trial} rules={rules} untilMs={end.observedAt} isRunning={false} />
-          <ObservationTable rows={trial.observations} caption={`Observations of the trial at ${time(trial.observedAt)}`} timeZone={timeZone} nowMs={nowMs} amendBase={amendBase} />
+          <ObservationTable rows={trial.observations} caption={`Observations of the trial at ${time(trial.observedAt)}`} timeZone={timeZone} nowMs={nowMs} />
         </div>
       </details>
     </article>

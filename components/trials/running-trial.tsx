@@ -45,7 +45,7 @@ export function RunningTrial({ dto, trial, nowMs }: Props) {
           <TrialEndForm key={ending} dto={dto} trialId={trial.entryId} trial={trial} outcome={ending} amending={null} nowMs={nowMs} onBack={() => setEnding(null)} />
         )
       ) : null}
-      <ObservationTable rows={trial.observations} caption="Observations of this trial" timeZone={timeZone} nowMs={nowMs} amendBase={dto.may.observe ? `/episodes/${episodeId}/trial` : null} />
+      <ObservationTable rows={trial.observations} caption="Observations of this trial" timeZone={timeZone} nowMs={nowMs} />
     </div>
   )
 }

@@ -78,7 +78,7 @@ function NoTrialRunning({ data, nowMs, isStale }: { data: TrialFormDto; nowMs: n
       {trials.length > 0 ? (
         <section className="my-6" aria-labelledby="trials-today">
           <h2 id="trials-today" className="mb-2 text-lg font-bold">Recorded today</h2>
-          {trials.map((trial) => <EndedTrial key={trial.id} trial={trial} rules={data.protocol.content.trial.stopRules} timeZone={patient.timeZone} nowMs={nowMs} amendBase={data.may.observe ? `/episodes/${patient.episodeId}/trial` : null} />)}
+          {trials.map((trial) => <EndedTrial key={trial.id} trial={trial} rules={data.protocol.content.trial.stopRules} timeZone={patient.timeZone} nowMs={nowMs} />)}
         </section>
       ) : null}
       {showsForm ? <TrialStartForm dto={data} nowMs={nowMs} /> : null}

@@ -7,12 +7,21 @@ import { preparedOnce } from './prepared'
 
 /** The latest stay of a patient tells whose patient it is: the open one, else the one that ended last. */
 export function findLatestStay(tx: Tx, patientId: string) {
-  return tx.select().from(stays).where(eq(stays.patientId, patientId))
-    .orderBy(sql`${stays.endedAt} is not null`, desc(stays.startedAt)).limit(1).get()
+  return tx
+    .select()
+    .from(stays)
+    .where(eq(stays.patientId, patientId))
+    .orderBy(sql`${stays.endedAt} is not null`, desc(stays.startedAt))
+    .limit(1)
+    .get()
 }
 
 export function findPatientOfHospital(tx: Tx, patientId: string, hospitalId: string) {
-  return tx.select().from(patients).where(and(eq(patients.id, patientId), eq(patients.hospitalId, hospitalId))).get()
+  return tx
+    .select()
+    .from(patients)
+    .where(and(eq(patients.id, patientId), eq(patients.hospitalId, hospitalId)))
+    .get()
 }
 
 export function findEpisode(tx: Tx, episodeId: string) {
@@ -20,9 +29,18 @@ export function findEpisode(tx: Tx, episodeId: string) {
 }
 
 const unitAmong = preparedOnce((tx) =>
-  tx.select().from(units).where(and(
-    eq(units.id, sql.placeholder('unitId')), eq(units.hospitalId, sql.placeholder('hospitalId')), isOneOf(units.id, sql`${sql.placeholder('unitIds')}`),
-  )).prepare())
+  tx
+    .select()
+    .from(units)
+    .where(
+      and(
+        eq(units.id, sql.placeholder('unitId')),
+        eq(units.hospitalId, sql.placeholder('hospitalId')),
+        isOneOf(units.id, sql`${sql.placeholder('unitIds')}`),
+      ),
+    )
+    .prepare(),
+)
 
 /** A unit, if it belongs to the hospital and is one of those given. */
 export function findUnitAmong(tx: Tx, unitId: string, hospitalId: string, unitIds: readonly string[]) {
@@ -34,9 +52,12 @@ export function findUnit(tx: Tx, unitId: string) {
 }
 
 export function findValidOpening(tx: Tx, personId: string, patientId: string, now: number) {
-  return tx.select().from(recordOpenings)
+  return tx
+    .select()
+    .from(recordOpenings)
     .where(and(eq(recordOpenings.personId, personId), eq(recordOpenings.patientId, patientId), gt(recordOpenings.expiresAt, now)))
-    .limit(1).get()
+    .limit(1)
+    .get()
 }
 
 export function findPerson(tx: Tx, personId: string) {
@@ -44,6 +65,9 @@ export function findPerson(tx: Tx, personId: string) {
 }
 
 export function listOpenMemberships(tx: Tx, personId: string) {
-  return tx.select({ unitId: memberships.unitId, role: memberships.role }).from(memberships)
-    .where(and(eq(memberships.personId, personId), isNull(memberships.endedAt))).all()
+  return tx
+    .select({ unitId: memberships.unitId, role: memberships.role })
+    .from(memberships)
+    .where(and(eq(memberships.personId, personId), isNull(memberships.endedAt)))
+    .all()
 }

@@ -9,11 +9,22 @@ export function insertOpening(tx: Tx, row: typeof recordOpenings.$inferInsert) {
 
 /** The latest openings of a unit's records, newest first. */
 export function listOpeningsOfUnit(tx: Tx, unitId: string, limit: number) {
-  return tx.select({
-    opening: recordOpenings, personName: people.name,
-    patient: { id: patients.id, familyName: patients.familyName, givenName: patients.givenName, recordNumber: patients.recordNumber },
-  }).from(recordOpenings)
+  return tx
+    .select({
+      opening: recordOpenings,
+      personName: people.name,
+      patient: {
+        id: patients.id,
+        familyName: patients.familyName,
+        givenName: patients.givenName,
+        recordNumber: patients.recordNumber,
+      },
+    })
+    .from(recordOpenings)
     .innerJoin(people, eq(people.id, recordOpenings.personId))
     .innerJoin(patients, eq(patients.id, recordOpenings.patientId))
-    .where(eq(recordOpenings.unitId, unitId)).orderBy(desc(recordOpenings.openedAt)).limit(limit).all()
+    .where(eq(recordOpenings.unitId, unitId))
+    .orderBy(desc(recordOpenings.openedAt))
+    .limit(limit)
+    .all()
 }

@@ -16,12 +16,19 @@ export function findSettingsVersion(tx: Tx, id: string) {
 
 /** The settings last observed in an episode, in their current version. */
 export function findLatestSettings(tx: Tx, episodeId: string) {
-  return tx.select().from(settings)
-    .where(and(
-      eq(settings.episodeId, episodeId), eq(settings.isWithdrawn, false),
-      notExists(tx.select({ id: newer.id }).from(newer).where(eq(newer.supersedesId, settings.id))),
-    ))
-    .orderBy(desc(settings.observedAt), desc(settings.recordedAt)).limit(1).get()
+  return tx
+    .select()
+    .from(settings)
+    .where(
+      and(
+        eq(settings.episodeId, episodeId),
+        eq(settings.isWithdrawn, false),
+        notExists(tx.select({ id: newer.id }).from(newer).where(eq(newer.supersedesId, settings.id))),
+      ),
+    )
+    .orderBy(desc(settings.observedAt), desc(settings.recordedAt))
+    .limit(1)
+    .get()
 }
 
 export function insertSettings(tx: Tx, row: typeof settings.$inferInsert) {

@@ -1,6 +1,13 @@
 import { z } from 'zod'
 import {
-  AIRWAYS, EPISODE_ENDS, EPISODE_STARTS, SUPPORTS_AFTER, TRIAL_OUTCOMES, type Airway, type EpisodeEnd, type EpisodeStart,
+  AIRWAYS,
+  EPISODE_ENDS,
+  EPISODE_STARTS,
+  SUPPORTS_AFTER,
+  TRIAL_OUTCOMES,
+  type Airway,
+  type EpisodeEnd,
+  type EpisodeStart,
 } from '@/lib/weaning/vocabulary'
 import { observedSchema } from './observed'
 
@@ -15,7 +22,10 @@ export function isExtubation(end: EpisodeEnd | null): boolean {
 
 /** Which airway a way of starting goes with; null when either is possible. */
 const AIRWAY_OF_START: Record<EpisodeStart, Airway | null> = {
-  intubated: 'endotracheal_tube', reintubated: 'endotracheal_tube', ventilator_on: 'tracheostomy', arrived_intubated: null,
+  intubated: 'endotracheal_tube',
+  reintubated: 'endotracheal_tube',
+  ventilator_on: 'tracheostomy',
+  arrived_intubated: null,
 }
 
 export const beginEpisodeSchema = z
@@ -28,9 +38,10 @@ export const beginEpisodeSchema = z
   .superRefine((input, issues) => {
     const airway = AIRWAY_OF_START[input.start]
     if (airway === null || airway === input.airway) return
-    const message = airway === 'tracheostomy'
-      ? 'Ventilation that is taken up again goes with a tracheostomy. For a new tube choose intubated or reintubated.'
-      : 'Intubation goes with an endotracheal tube. For a tracheostomy choose ventilator on, or arrived intubated.'
+    const message =
+      airway === 'tracheostomy'
+        ? 'Ventilation that is taken up again goes with a tracheostomy. For a new tube choose intubated or reintubated.'
+        : 'Intubation goes with an endotracheal tube. For a tracheostomy choose ventilator on, or arrived intubated.'
     issues.addIssue({ code: 'custom', path: ['airway'], message })
   })
 export type BeginEpisodeInput = z.output<typeof beginEpisodeSchema>
@@ -45,7 +56,9 @@ export const endEpisodeSchema = z
     end: z.enum(EPISODE_ENDS, { error: 'Choose how ventilation ended.' }),
     supportAfter: z.enum(SUPPORTS_AFTER, { error: 'Choose the support afterwards.' }).nullish(),
     reason: freeText.nullish(),
-    trialEnd: z.object({ outcome: z.enum(TRIAL_OUTCOMES, { error: 'Choose how the trial ended.' }), reason: freeText.nullish() }).nullish(),
+    trialEnd: z
+      .object({ outcome: z.enum(TRIAL_OUTCOMES, { error: 'Choose how the trial ended.' }), reason: freeText.nullish() })
+      .nullish(),
   })
   .superRefine((input, issues) => {
     if (input.end === 'extubated' && !input.supportAfter) {

@@ -3,7 +3,9 @@ import { z } from 'zod'
 /** When something was observed, as the wall clock of the unit showed it. `fold` is asked for only in the hour that is doubled in autumn. */
 export const observedSchema = z.object({
   day: z.string({ error: 'Give the day.' }).regex(/^\d{4}-\d{2}-\d{2}$/, 'Give the day, such as 2026-12-01.'),
-  time: z.string({ error: 'Give the time.' }).regex(/^([01]\d|2[0-3]):[0-5]\d$/, 'Give the time on the 24-hour clock, such as 05:40.'),
+  time: z
+    .string({ error: 'Give the time.' })
+    .regex(/^([01]\d|2[0-3]):[0-5]\d$/, 'Give the time on the 24-hour clock, such as 05:40.'),
   fold: z.enum(['first', 'second']).optional(),
 })
 export type ObservedInput = z.input<typeof observedSchema>

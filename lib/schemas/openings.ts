@@ -6,8 +6,11 @@ export const OPENING_HOURS = 8
 
 export const openRecordSchema = z.object({
   recordNumber: recordNumberSchema,
-  reason: z.string({ error: 'Say why you open this record.' }).trim()
-    .min(10, 'Say why you open this record, in at least 10 characters. The unit lead reads it.').max(500, 'Keep this under 500 characters.'),
+  reason: z
+    .string({ error: 'Say why you open this record.' })
+    .trim()
+    .min(10, 'Say why you open this record, in at least 10 characters. The unit lead reads it.')
+    .max(500, 'Keep this under 500 characters.'),
 })
 export type OpenRecordInput = z.output<typeof openRecordSchema>
 

@@ -2,7 +2,16 @@ import type { NextMove } from '@/lib/weaning/day-record'
 import type { ObservedReadings, Reading, ScreenReadings } from '@/lib/weaning/readings'
 import type { ScreenVerdict } from '@/lib/weaning/screen/verdict'
 import type {
-  DecisionChoice, ExcuseReason, HoldOutcome, HoldSafetyItem, HoldStart, NotTodayReason, ScreenResult, SupportAfter, TrialOutcome, TrialTechnique,
+  DecisionChoice,
+  ExcuseReason,
+  HoldOutcome,
+  HoldSafetyItem,
+  HoldStart,
+  NotTodayReason,
+  ScreenResult,
+  SupportAfter,
+  TrialOutcome,
+  TrialTechnique,
 } from '@/lib/weaning/vocabulary'
 import type { AirwayEventDto } from './airway'
 import type { EpisodeDto } from './episodes'
@@ -13,7 +22,11 @@ import type { SettingsDto } from './settings'
 import type { DayTrackDto } from './today'
 
 export type ScreenEntryDto = EntryDto & {
-  result: ScreenResult; excuse: ExcuseReason | null; note: string | null; readings: ScreenReadings | null; verdict: ScreenVerdict | null
+  result: ScreenResult
+  excuse: ExcuseReason | null
+  note: string | null
+  readings: ScreenReadings | null
+  verdict: ScreenVerdict | null
 }
 export type HoldEntryDto = EntryDto & {
   start: HoldStart
@@ -21,7 +34,11 @@ export type HoldEntryDto = EntryDto & {
   infusions: { drug: string; rate: number; unit: string; purpose: 'sedation' | 'pain' }[]
   note: string | null
 }
-export type HoldObservationEntryDto = EntryDto & { holdId: string; readings: ObservedReadings; opensEyesToVoice: 'yes' | 'no' | null }
+export type HoldObservationEntryDto = EntryDto & {
+  holdId: string
+  readings: ObservedReadings
+  opensEyesToVoice: 'yes' | 'no' | null
+}
 export type HoldEndEntryDto = EntryDto & {
   holdId: string
   outcome: HoldOutcome
@@ -41,7 +58,14 @@ export type TrialEntryDto = EntryDto & {
   startedAnywayBecause: string | null
 }
 export type TrialObservationEntryDto = EntryDto & { trialId: string; readings: ObservedReadings }
-export type TrialEndEntryDto = EntryDto & { trialId: string; outcome: TrialOutcome; rulesMet: string[]; rulesMetWords: string[]; returnedTo: string; reason: string | null }
+export type TrialEndEntryDto = EntryDto & {
+  trialId: string
+  outcome: TrialOutcome
+  rulesMet: string[]
+  rulesMetWords: string[]
+  returnedTo: string
+  reason: string | null
+}
 export type DecisionEntryDto = EntryDto & {
   choice: DecisionChoice
   reasons: NotTodayReason[]
@@ -83,7 +107,12 @@ export type PatientDayDto = { day: string; dayNumber: number | null; entries: Re
 
 export type TrendsDto = {
   settings: {
-    atMs: number; fio2Fraction: number; peepCmH2O: number; ratePerMin: number | null; tidalVolumeMl: number | null; spo2Percent: number | null
+    atMs: number
+    fio2Fraction: number
+    peepCmH2O: number
+    ratePerMin: number | null
+    tidalVolumeMl: number | null
+    spo2Percent: number | null
     minuteVentilationLPerMin: number | null
   }[]
   /** From measured rate and volume, wherever both were recorded together. */

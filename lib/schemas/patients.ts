@@ -3,11 +3,17 @@ import { SEXES, type Airway, type Sex, type StayEnd } from '@/lib/weaning/vocabu
 import { observedSchema } from './observed'
 import { askSecondLook, optionalReading } from './reading'
 
-const name = (what: string) => z.string({ error: `Give the ${what}.` }).trim().min(1, `Give the ${what}.`).max(80, `The ${what} has at most 80 characters.`)
+const name = (what: string) =>
+  z
+    .string({ error: `Give the ${what}.` })
+    .trim()
+    .min(1, `Give the ${what}.`)
+    .max(80, `The ${what} has at most 80 characters.`)
 
 const EARLIEST_BIRTH = '1900-01-01'
 
-const birthDate = z.string({ error: 'Give the date of birth, or leave it empty when it is not known.' })
+const birthDate = z
+  .string({ error: 'Give the date of birth, or leave it empty when it is not known.' })
   .regex(/^\d{4}-\d{2}-\d{2}$/, 'Give the date of birth as year-month-day, such as 1961-05-20.')
   .refine((day) => isCalendarDay(day), 'This day does not exist. Give the date of birth as year-month-day, such as 1961-05-20.')
   .refine((day) => day >= EARLIEST_BIRTH, 'This date of birth is too long ago. Look at the year.')
@@ -19,8 +25,12 @@ function isCalendarDay(day: string): boolean {
 }
 
 /** The hospital's number of a patient, in capitals, so that one written in small letters is the same. */
-export const recordNumberSchema = z.string({ error: 'Give the record number.' }).trim().min(1, 'Give the record number.')
-  .max(40, 'A record number has at most 40 characters.').transform((text) => text.replace(/\s+/g, ' ').toUpperCase())
+export const recordNumberSchema = z
+  .string({ error: 'Give the record number.' })
+  .trim()
+  .min(1, 'Give the record number.')
+  .max(40, 'A record number has at most 40 characters.')
+  .transform((text) => text.replace(/\s+/g, ' ').toUpperCase())
 
 /** Who the patient is. What is not known is null; then nothing is computed that needs it. */
 const patientInput = {
@@ -95,11 +105,32 @@ export type PatientHeadDto = {
   unlikely: string[]
 }
 
-export type StayDto = { id: string; bedId: string; bedLabel: string; startedAt: number; endedAt: number | null; end: StayEnd | null }
+export type StayDto = {
+  id: string
+  bedId: string
+  bedLabel: string
+  startedAt: number
+  endedAt: number | null
+  end: StayEnd | null
+}
 
 /** What the page lets the reader do; the verbs check again. */
 export const PATIENT_ACTIONS = [
-  'patient.correct', 'stay.move', 'stay.end', 'episode.begin', 'episode.end', 'airway.record', 'settings.record', 'gas.record',
-  'screen.record', 'hold.start', 'hold.observe', 'hold.end', 'trial.start', 'trial.observe', 'trial.end', 'decision.sign',
+  'patient.correct',
+  'stay.move',
+  'stay.end',
+  'episode.begin',
+  'episode.end',
+  'airway.record',
+  'settings.record',
+  'gas.record',
+  'screen.record',
+  'hold.start',
+  'hold.observe',
+  'hold.end',
+  'trial.start',
+  'trial.observe',
+  'trial.end',
+  'decision.sign',
 ] as const
 export type PatientActions = Record<(typeof PATIENT_ACTIONS)[number], boolean>

@@ -10,7 +10,10 @@ export function requiredReading(reading: LimitedReading) {
 
 /** The same, but it may be left out; what is left out is stored as not assessed. */
 export function optionalReading(reading: LimitedReading) {
-  return z.number({ error: `Give ${HARD_LIMITS[reading].label} as a number, or leave it empty.` }).superRefine(checkLimits(reading)).nullable()
+  return z
+    .number({ error: `Give ${HARD_LIMITS[reading].label} as a number, or leave it empty.` })
+    .superRefine(checkLimits(reading))
+    .nullable()
 }
 
 function checkLimits(reading: LimitedReading) {
@@ -19,8 +22,12 @@ function checkLimits(reading: LimitedReading) {
     const slip = suspectUnitSlip(reading, value)
     if (slip !== null) issues.addIssue({ code: 'custom', message: slip })
     else if (value < hardMin || value > hardMax) {
-      issues.addIssue({ code: 'custom', message: `${value} is not possible: ${label} is between ${hardMin} and ${hardMax} ${unit}.`.replace(' .', '.') })
-    } else if (isWhole && !Number.isInteger(value)) issues.addIssue({ code: 'custom', message: `Give ${label} as a whole number.` })
+      issues.addIssue({
+        code: 'custom',
+        message: `${value} is not possible: ${label} is between ${hardMin} and ${hardMax} ${unit}.`.replace(' .', '.'),
+      })
+    } else if (isWhole && !Number.isInteger(value))
+      issues.addIssue({ code: 'custom', message: `Give ${label} as a whole number.` })
   }
 }
 
@@ -70,7 +77,10 @@ function unlikelyFields(values: object): { path: string[]; reading: LimitedReadi
 
 function unlikelyAt(values: object, path: string[]): { path: string[]; reading: LimitedReading; value: number }[] {
   return Object.entries(values).flatMap(([name, value]: [string, unknown]) =>
-    typeof value === 'number' && isLimitedReading(name) && isUnlikely(name, value) ? [{ path: [...path, name], reading: name, value }] : [])
+    typeof value === 'number' && isLimitedReading(name) && isUnlikely(name, value)
+      ? [{ path: [...path, name], reading: name, value }]
+      : [],
+  )
 }
 
 function isLimitedReading(name: string): name is LimitedReading {

@@ -1,7 +1,14 @@
 import { z } from 'zod'
 import type { NextMove } from '@/lib/weaning/day-record'
 import type {
-  Airway, DecisionChoice, ExcuseReason, HoldOutcome, HoldStart, ScreenResult, TrialOutcome, VentilatorMode,
+  Airway,
+  DecisionChoice,
+  ExcuseReason,
+  HoldOutcome,
+  HoldStart,
+  ScreenResult,
+  TrialOutcome,
+  VentilatorMode,
 } from '@/lib/weaning/vocabulary'
 
 export const todayQuerySchema = z.object({ unitId: z.string().min(1) })
@@ -43,7 +50,13 @@ export type TodayDto = {
   trackToMs: number
   nowMs: number
   counts: {
-    ventilated: number; screened: number; ready: number; onHold: number; onTrial: number; decisionsOwed: number; overdue: number
+    ventilated: number
+    screened: number
+    ready: number
+    onHold: number
+    onTrial: number
+    decisionsOwed: number
+    overdue: number
   }
   /** In bed order. */
   rows: TodayRowDto[]

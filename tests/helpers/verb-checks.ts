@@ -30,8 +30,13 @@ export function expectRefusal(run: () => unknown, code: ErrorCode, field?: strin
 
 /** Rows of every table, by table. */
 export function countRows(db: Db): Record<string, number> {
-  const tables = db.$client.prepare("select name from sqlite_master where type = 'table' and name not like 'sqlite_%'").pluck().all() as string[]
-  return Object.fromEntries(tables.map((name) => [name, db.$client.prepare(`select count(*) from "${name}"`).pluck().get() as number]))
+  const tables = db.$client
+    .prepare("select name from sqlite_master where type = 'table' and name not like 'sqlite_%'")
+    .pluck()
+    .all() as string[]
+  return Object.fromEntries(
+    tables.map((name) => [name, db.$client.prepare(`select count(*) from "${name}"`).pluck().get() as number]),
+  )
 }
 
 /** Everything that is on record, for comparing before and after. */
@@ -67,7 +72,12 @@ export function expectNothingLeft<Input>(ctx: PersonCtx, verb: Verb<Input, unkno
 
 /** The same request sent twice with one idempotency key: the same answer, and nothing new the second time. Other values with that key are a conflict. */
 export function expectOnce<Input extends object, Answer>(
-  db: Db, person: TestPerson, verb: Verb<Input, Answer>, input: Input, other: Input, now: number = NOW,
+  db: Db,
+  person: TestPerson,
+  verb: Verb<Input, Answer>,
+  input: Input,
+  other: Input,
+  now: number = NOW,
 ): Answer {
   const ctx = makeCtx(db, person, now, { idempotencyKey: newId() })
   const first = verb(ctx, input)

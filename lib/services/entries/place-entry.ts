@@ -14,7 +14,12 @@ import { resolveObserved } from './resolve-observed'
 
 /** The version that an amendment replaces, as read by the aggregate's own query. */
 export type AmendedRow = {
-  id: string; entryId: string; entryVersion: number; episodeId: string; recordedBy: string; protocolVersionId: string
+  id: string
+  entryId: string
+  entryVersion: number
+  episodeId: string
+  recordedBy: string
+  protocolVersionId: string
 }
 
 type PlaceInput = {
@@ -61,19 +66,30 @@ function refuseOutsideEpisode(found: EpisodeInUnit, observedAt: number, now: num
   const { episode, unit } = found
   // A minute of grace: forms give whole minutes, the episode may have begun within one.
   if (observedAt < episode.startedAt - MINUTE_MS) {
-    throw invalidField('observed.time', `This is before ventilation began (${formatTime(episode.startedAt, unit.timeZone, now)}). Give a later time.`)
+    throw invalidField(
+      'observed.time',
+      `This is before ventilation began (${formatTime(episode.startedAt, unit.timeZone, now)}). Give a later time.`,
+    )
   }
   if (!mayFollowEnd && episode.endedAt !== null && observedAt > episode.endedAt + MINUTE_MS) {
-    throw invalidField('observed.time', `Ventilation ended at ${formatTime(episode.endedAt, unit.timeZone, now)}. Give an earlier time.`)
+    throw invalidField(
+      'observed.time',
+      `Ventilation ended at ${formatTime(episode.endedAt, unit.timeZone, now)}. Give an earlier time.`,
+    )
   }
 }
 
 function findAmendable(ctx: Ctx, found: EpisodeInUnit, id: string, findAmended: PlaceInput['findAmended']): AmendedRow {
   const amended = findAmended?.(id)
-  if (!amended || amended.row.episodeId !== found.episode.id) throw new AppError('NOT_FOUND', 'The entry to correct was not found.')
+  if (!amended || amended.row.episodeId !== found.episode.id)
+    throw new AppError('NOT_FOUND', 'The entry to correct was not found.')
   if (amended.isSuperseded) {
-    throw new AppError('CONFLICT', 'Someone corrected this entry in the meantime. Reload to see the newer version; nothing was recorded.')
+    throw new AppError(
+      'CONFLICT',
+      'Someone corrected this entry in the meantime. Reload to see the newer version; nothing was recorded.',
+    )
   }
-  if (!mayAmend(ctx, found.unit.id, amended.row.recordedBy)) throw new AppError('FORBIDDEN', 'Only the author of an entry or a physician can correct it.')
+  if (!mayAmend(ctx, found.unit.id, amended.row.recordedBy))
+    throw new AppError('FORBIDDEN', 'Only the author of an entry or a physician can correct it.')
   return amended.row
 }

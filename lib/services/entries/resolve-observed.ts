@@ -16,10 +16,16 @@ export function resolveObserved(observed: ObservedInput, timeZone: string, now: 
   const moments = wallClockMoments(observed.day, hours * 60 + minutes, timeZone)
   const [first, second] = moments
   if (first === undefined) {
-    throw invalidField(`${field}.time`, `The clocks went forward on ${formatDay(observed.day)}: ${observed.time} did not exist. Give the time after the change.`)
+    throw invalidField(
+      `${field}.time`,
+      `The clocks went forward on ${formatDay(observed.day)}: ${observed.time} did not exist. Give the time after the change.`,
+    )
   }
   if (second !== undefined && observed.fold === undefined) {
-    throw invalidField(`${field}.fold`, `The clocks went back on ${formatDay(observed.day)}: ${observed.time} came twice. Say whether it was the first or the second.`)
+    throw invalidField(
+      `${field}.fold`,
+      `The clocks went back on ${formatDay(observed.day)}: ${observed.time} came twice. Say whether it was the first or the second.`,
+    )
   }
   const at = second !== undefined && observed.fold === 'second' ? second : first
   if (at > now + MINUTE_MS) {

@@ -6,7 +6,13 @@ import { MINUTE_MS } from '@/lib/shared/time'
 export const LATE_AFTER_MS = 30 * MINUTE_MS
 
 type EntryRow = {
-  id: string; entryId: string; entryVersion: number; amendReason: string | null; observedAt: number; recordedAt: number; ventilatorDay: string
+  id: string
+  entryId: string
+  entryVersion: number
+  amendReason: string | null
+  observedAt: number
+  recordedAt: number
+  ventilatorDay: string
 }
 
 /** The part of an answer that every entry shares. Pass the whole row: unlikely values are found in it and named. */

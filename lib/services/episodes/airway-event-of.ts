@@ -6,4 +6,9 @@ export function airwayEventOf(end: EpisodeEnd): AirwayEvent | null {
 }
 
 /** Events that end an episode. */
-export const END_EVENTS = ['extubated', 'self_extubated', 'accidentally_extubated', 'ventilator_off'] as const satisfies readonly AirwayEvent[]
+export const END_EVENTS = [
+  'extubated',
+  'self_extubated',
+  'accidentally_extubated',
+  'ventilator_off',
+] as const satisfies readonly AirwayEvent[]

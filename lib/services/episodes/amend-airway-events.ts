@@ -13,7 +13,12 @@ import { airwayEventOf, END_EVENTS } from './airway-event-of'
 /** Adds the corrected version of the event that began the (already corrected) episode. */
 export function amendBeginEvent(tx: Tx, ctx: Ctx, found: EpisodeInUnit, input: CorrectEpisodeInput): void {
   const event = findAirwayEvent(tx, found.episode.id, EPISODE_STARTS, 'first')
-  addVersion(tx, ctx, found, { amendedId: event?.id, observed: input.began.observed, event: input.began.start, reason: input.reason })
+  addVersion(tx, ctx, found, {
+    amendedId: event?.id,
+    observed: input.began.observed,
+    event: input.began.start,
+    reason: input.reason,
+  })
 }
 
 /** Adds the corrected version of the event that ended the episode; withdraws it when the episode did not end, or not by the airway. */
@@ -24,19 +29,37 @@ export function amendEndEvent(tx: Tx, ctx: Ctx, found: EpisodeInUnit, input: Cor
     addVersion(tx, ctx, found, { amendedId: standing?.id, observed: input.ended.observed, event, reason: input.reason })
   } else if (standing) {
     const observed = toWallClock(standing.observedAt, found.unit.timeZone)
-    addVersion(tx, ctx, found, { amendedId: standing.id, observed, event: standing.event, reason: input.reason, isWithdrawn: true })
+    addVersion(tx, ctx, found, {
+      amendedId: standing.id,
+      observed,
+      event: standing.event,
+      reason: input.reason,
+      isWithdrawn: true,
+    })
   }
 }
 
-type Version = { amendedId: string | undefined; observed: ObservedInput; event: AirwayEvent; reason: string; isWithdrawn?: boolean }
+type Version = {
+  amendedId: string | undefined
+  observed: ObservedInput
+  event: AirwayEvent
+  reason: string
+  isWithdrawn?: boolean
+}
 
 function addVersion(tx: Tx, ctx: Ctx, found: EpisodeInUnit, version: Version): void {
   const amended = version.amendedId === undefined ? undefined : findAirwayEventVersion(tx, version.amendedId)
   const { columns } = placeEntry(tx, ctx, found, {
-    observed: version.observed, amends: amended ? { id: amended.row.id, reason: version.reason } : null, findAmended: () => amended, mayFollowEnd: true,
+    observed: version.observed,
+    amends: amended ? { id: amended.row.id, reason: version.reason } : null,
+    findAmended: () => amended,
+    mayFollowEnd: true,
   })
   insertAirwayEvent(tx, {
-    ...columns, event: version.event, reason: amended?.row.reason ?? null, supportAfter: amended?.row.supportAfter ?? null,
+    ...columns,
+    event: version.event,
+    reason: amended?.row.reason ?? null,
+    supportAfter: amended?.row.supportAfter ?? null,
     isWithdrawn: version.isWithdrawn ?? false,
   })
 }

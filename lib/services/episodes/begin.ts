@@ -26,26 +26,48 @@ export function beginEpisode(ctx: Ctx, input: BeginEpisodeInput): { episodeId: s
     const startedAt = resolveObserved(input.observed, found.unit.timeZone, ctx.now)
     refuseImpossibleStart(tx, ctx, found, input, startedAt)
     const episode = insertEpisode(tx, {
-      id: newId(), patientId: found.patient.id, startedAt, start: input.start, airway: input.airway, recordedAt: ctx.now,
+      id: newId(),
+      patientId: found.patient.id,
+      startedAt,
+      start: input.start,
+      airway: input.airway,
+      recordedAt: ctx.now,
       recordedBy: ctx.actor.personId,
     })
     const { columns } = placeEntry(tx, ctx, { ...found, episode }, { observed: input.observed })
     insertAirwayEvent(tx, { ...columns, event: input.start })
-    writeAudit(tx, ctx, { action: 'episode.begin', unitId: found.unit.id, subject: { kind: 'episode', id: episode.id }, after: episode })
+    writeAudit(tx, ctx, {
+      action: 'episode.begin',
+      unitId: found.unit.id,
+      subject: { kind: 'episode', id: episode.id },
+      after: episode,
+    })
     return { episodeId: episode.id }
   })
 }
 
-function refuseImpossibleStart(tx: Tx, ctx: Ctx, { patient, unit }: PatientInUnit, input: BeginEpisodeInput, startedAt: number): void {
+function refuseImpossibleStart(
+  tx: Tx,
+  ctx: Ctx,
+  { patient, unit }: PatientInUnit,
+  input: BeginEpisodeInput,
+  startedAt: number,
+): void {
   const say = (ms: number) => formatTime(ms, unit.timeZone, ctx.now)
   const stay = findOpenStay(tx, patient.id)
   if (!stay) throw new AppError('PRECONDITION', 'This patient is in no bed now. Admit the patient to a bed first.')
   const last = listEpisodesOfPatient(tx, patient.id).at(-1)
   if (last && last.endedAt === null) {
-    throw new AppError('CONFLICT', `Ventilation was already begun, at ${say(last.startedAt)}. Reload the page to see it; nothing was recorded.`)
+    throw new AppError(
+      'CONFLICT',
+      `Ventilation was already begun, at ${say(last.startedAt)}. Reload the page to see it; nothing was recorded.`,
+    )
   }
   if (!findUnitAt(tx, patient.id, startedAt)) {
-    throw invalidField('observed.time', `The patient was in no bed here then; in this one since ${say(stay.startedAt)}. Give a later time.`)
+    throw invalidField(
+      'observed.time',
+      `The patient was in no bed here then; in this one since ${say(stay.startedAt)}. Give a later time.`,
+    )
   }
   if (last && startedAt < (last.endedAt ?? 0)) {
     throw invalidField('observed.time', `The last ventilation ended at ${say(last.endedAt ?? 0)}. Give a later time.`)
@@ -53,7 +75,12 @@ function refuseImpossibleStart(tx: Tx, ctx: Ctx, { patient, unit }: PatientInUni
   refuseWrongStart(input.start, last, startedAt, say)
 }
 
-function refuseWrongStart(start: BeginEpisodeInput['start'], last: EpisodeRow | undefined, startedAt: number, say: (ms: number) => string): void {
+function refuseWrongStart(
+  start: BeginEpisodeInput['start'],
+  last: EpisodeRow | undefined,
+  startedAt: number,
+  say: (ms: number) => string,
+): void {
   const extubatedAt = last && isExtubation(last.end) ? last.endedAt : null
   if (start === 'intubated' && extubatedAt !== null && startedAt - extubatedAt <= REINTUBATION_WITHIN_MS) {
     throw invalidField('start', `This patient was extubated at ${say(extubatedAt)}. Choose reintubated.`)

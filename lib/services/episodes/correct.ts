@@ -19,21 +19,41 @@ export function correctEpisode(ctx: Ctx, input: CorrectEpisodeInput): { episodeI
   const found = authorize(ctx, 'episode.end', { episodeId: input.episodeId })
   return once(ctx, 'episode.end', input, (tx) => {
     const { episode, unit } = found
-    const began = { at: resolveObserved(input.began.observed, unit.timeZone, ctx.now, 'began.observed'), start: input.began.start }
-    const ended = input.ended && { at: resolveObserved(input.ended.observed, unit.timeZone, ctx.now, 'ended.observed'), end: input.ended.end }
+    const began = {
+      at: resolveObserved(input.began.observed, unit.timeZone, ctx.now, 'began.observed'),
+      start: input.began.start,
+    }
+    const ended = input.ended && {
+      at: resolveObserved(input.ended.observed, unit.timeZone, ctx.now, 'ended.observed'),
+      end: input.ended.end,
+    }
     const isBeginChanged = !isSameMinute(began.at, episode.startedAt) || began.start !== episode.start
-    const isEndChanged = ended ? episode.endedAt === null || !isSameMinute(ended.at, episode.endedAt) || ended.end !== episode.end : episode.endedAt !== null
+    const isEndChanged = ended
+      ? episode.endedAt === null || !isSameMinute(ended.at, episode.endedAt) || ended.end !== episode.end
+      : episode.endedAt !== null
     refuseUnasked(ctx, found, { isBeginChanged, isEndChanged, hasEnd: ended !== null })
     const startedAt = isBeginChanged ? began.at : episode.startedAt
     const endedAt = ended && (isEndChanged ? ended.at : episode.endedAt)
     refuseImpossibleSpan(tx, ctx, found, { startedAt, start: began.start, endedAt, end: ended?.end ?? null })
-    const after = updateEpisode(tx, { id: episode.id, version: input.version }, { startedAt, start: began.start, endedAt, end: ended?.end ?? null })
-    if (!after) throw new AppError('CONFLICT', 'Someone changed this episode in the meantime. Reload the page to see it; nothing was changed.')
+    const after = updateEpisode(
+      tx,
+      { id: episode.id, version: input.version },
+      { startedAt, start: began.start, endedAt, end: ended?.end ?? null },
+    )
+    if (!after)
+      throw new AppError(
+        'CONFLICT',
+        'Someone changed this episode in the meantime. Reload the page to see it; nothing was changed.',
+      )
     const corrected = { ...found, episode: after }
     if (isBeginChanged) amendBeginEvent(tx, ctx, corrected, input)
     if (isEndChanged) amendEndEvent(tx, ctx, corrected, input)
     writeAudit(tx, ctx, {
-      action: 'episode.correct', unitId: unit.id, subject: { kind: 'episode', id: episode.id }, before: episode, after: { ...after, reason: input.reason },
+      action: 'episode.correct',
+      unitId: unit.id,
+      subject: { kind: 'episode', id: episode.id },
+      before: episode,
+      after: { ...after, reason: input.reason },
     })
     return { episodeId: episode.id }
   })
@@ -51,6 +71,8 @@ function refuseUnasked(ctx: Ctx, { episode, unit }: EpisodeInUnit, { isBeginChan
   if (isEndChanged && hasEnd && episode.endedAt === null) {
     throw new AppError('PRECONDITION', 'Ventilation has not been ended yet. Record its end on the page for that.')
   }
-  const isAllowed = (!isBeginChanged || mayAmend(ctx, unit.id, episode.recordedBy)) && (!isEndChanged || mayAmend(ctx, unit.id, episode.endRecordedBy))
+  const isAllowed =
+    (!isBeginChanged || mayAmend(ctx, unit.id, episode.recordedBy)) &&
+    (!isEndChanged || mayAmend(ctx, unit.id, episode.endRecordedBy))
   if (!isAllowed) throw new AppError('FORBIDDEN', 'Only the author of an entry or a physician can correct it.')
 }

@@ -18,7 +18,14 @@ import { groupDayEntries, toDayRecord } from '../today/to-day-record'
  * `trialEnd` when that is missing, and asks for a reason where the trial's own page would ask for one.
  */
 // no-door: called by episodes/end inside its own transaction, after its door
-export function endRunningTrial(tx: Tx, ctx: Ctx, found: EpisodeInUnit, observed: ObservedInput, at: number, trialEnd: EndEpisodeInput['trialEnd']): void {
+export function endRunningTrial(
+  tx: Tx,
+  ctx: Ctx,
+  found: EpisodeInUnit,
+  observed: ObservedInput,
+  at: number,
+  trialEnd: EndEpisodeInput['trialEnd'],
+): void {
   const { episode, unit } = found
   const entries = listDayEntries(tx, [episode.id], localDay(at, unit.timeZone), at)
   const trial = entries.trials.find((row) => !entries.trialEnds.some((end) => end.trialId === row.entryId))
@@ -29,10 +36,16 @@ export function endRunningTrial(tx: Tx, ctx: Ctx, found: EpisodeInUnit, observed
   const rulesMet = record.trials.find((one) => one.endedMs === null)?.stopRulesMet ?? []
   const isShort = at < trial.observedAt + trial.plannedDurationMin * MINUTE_MS
   const needsReason = trialEnd.outcome !== 'passed' || rulesMet.length > 0 || isShort
-  if (needsReason && (trialEnd.reason ?? '').length < 3) throw invalidField('trialEnd.reason', reasonQuestion(trialEnd.outcome, rulesMet.length > 0))
+  if (needsReason && (trialEnd.reason ?? '').length < 3)
+    throw invalidField('trialEnd.reason', reasonQuestion(trialEnd.outcome, rulesMet.length > 0))
   const { columns } = placeEntry(tx, ctx, found, { observed })
   const row = insertTrialEnd(tx, {
-    ...columns, protocolVersionId: trial.protocolVersionId, trialId: trial.entryId, outcome: trialEnd.outcome, rulesMet, returnedTo: 'Extubated',
+    ...columns,
+    protocolVersionId: trial.protocolVersionId,
+    trialId: trial.entryId,
+    outcome: trialEnd.outcome,
+    rulesMet,
+    returnedTo: 'Extubated',
     reason: trialEnd.reason ?? null,
   })
   writeAudit(tx, ctx, { action: 'trial.end', unitId: columns.unitId, subject: { kind: 'trial_end', id: row.id }, after: row })

@@ -28,7 +28,10 @@ export function endEpisode(ctx: Ctx, input: EndEpisodeInput): { episodeId: strin
     if (ctx.actor.kind !== 'person') throw new AppError('FORBIDDEN', 'Only a person can record this.')
     const { episode, unit } = found
     if (episode.endedAt !== null) {
-      throw new AppError('CONFLICT', `Ventilation was already ended, at ${formatTime(episode.endedAt, unit.timeZone, ctx.now)}. Reload the page to see it; nothing was recorded.`)
+      throw new AppError(
+        'CONFLICT',
+        `Ventilation was already ended, at ${formatTime(episode.endedAt, unit.timeZone, ctx.now)}. Reload the page to see it; nothing was recorded.`,
+      )
     }
     const endedAt = resolveObserved(input.observed, unit.timeZone, ctx.now)
     refuseWrongAirway(input, episode.airway)
@@ -39,13 +42,28 @@ export function endEpisode(ctx: Ctx, input: EndEpisodeInput): { episodeId: strin
     refuseBeforeEntries(tx, found, endedAt, ctx.now)
     const { columns } = placeEntry(tx, ctx, found, { observed: input.observed })
     const event = airwayEventOf(input.end)
-    if (event) insertAirwayEvent(tx, { ...columns, event, reason: input.reason ?? null, supportAfter: input.supportAfter ?? null })
-    const after = updateEpisode(tx, { id: episode.id, version: input.version }, {
-      endedAt, end: input.end, endRecordedAt: ctx.now, endRecordedBy: ctx.actor.personId,
-    })
-    if (!after) throw new AppError('CONFLICT', 'Someone changed this episode in the meantime. Reload the page to see it; nothing was recorded.')
+    if (event)
+      insertAirwayEvent(tx, { ...columns, event, reason: input.reason ?? null, supportAfter: input.supportAfter ?? null })
+    const after = updateEpisode(
+      tx,
+      { id: episode.id, version: input.version },
+      {
+        endedAt,
+        end: input.end,
+        endRecordedAt: ctx.now,
+        endRecordedBy: ctx.actor.personId,
+      },
+    )
+    if (!after)
+      throw new AppError(
+        'CONFLICT',
+        'Someone changed this episode in the meantime. Reload the page to see it; nothing was recorded.',
+      )
     writeAudit(tx, ctx, {
-      action: 'episode.end', unitId: columns.unitId, subject: { kind: 'episode', id: episode.id }, before: episode,
+      action: 'episode.end',
+      unitId: columns.unitId,
+      subject: { kind: 'episode', id: episode.id },
+      before: episode,
       after: { ...after, reason: input.reason ?? null },
     })
     return { episodeId: episode.id, endedAt }
@@ -54,18 +72,27 @@ export function endEpisode(ctx: Ctx, input: EndEpisodeInput): { episodeId: strin
 
 function refuseWrongAirway(input: EndEpisodeInput, airway: EpisodeInUnit['episode']['airway']): void {
   if (input.end === 'ventilator_off' && airway !== 'tracheostomy') {
-    throw invalidField('end', 'Taking the ventilator off and leaving the airway goes with a tracheostomy. This patient has an endotracheal tube: choose the extubation.')
+    throw invalidField(
+      'end',
+      'Taking the ventilator off and leaving the airway goes with a tracheostomy. This patient has an endotracheal tube: choose the extubation.',
+    )
   }
   if (airway === 'tracheostomy' && ['extubated', 'self_extubated'].includes(input.end)) {
     throw invalidField('end', 'This patient has a tracheostomy. Choose ventilator off.')
   }
 }
 
-function refuseWithoutDecision(tx: Tx, { episode, unit }: EpisodeInUnit, endedAt: number, reason: string | null | undefined): void {
+function refuseWithoutDecision(
+  tx: Tx,
+  { episode, unit }: EpisodeInUnit,
+  endedAt: number,
+  reason: string | null | undefined,
+): void {
   const decision = findLatestDecision(tx, episode.id)
   const isFor = decision?.choice === 'extubate' || decision?.choice === 'comfort_extubation'
-  const isFresh = decision !== undefined
-    && (decision.ventilatorDay === localDay(endedAt, unit.timeZone) || Math.abs(endedAt - decision.observedAt) <= DECISION_HOLDS_MS)
+  const isFresh =
+    decision !== undefined &&
+    (decision.ventilatorDay === localDay(endedAt, unit.timeZone) || Math.abs(endedAt - decision.observedAt) <= DECISION_HOLDS_MS)
   if ((isFor && isFresh) || (reason ?? '').length >= 3) return
   throw invalidField('reason', 'No signed decision to extubate stands for today. Say why the patient is extubated without it.')
 }
@@ -75,5 +102,8 @@ function refuseBeforeEntries(tx: Tx, { episode, unit }: EpisodeInUnit, endedAt: 
   const span = findObservedSpan(tx, episode.id)
   if (!span || span.lastMs <= endedAt + MINUTE_MS) return
   const last = formatTime(span.lastMs, unit.timeZone, now)
-  throw invalidField('observed.time', `An entry stands at ${last}, after this time. Give a later time, or correct that entry first.`)
+  throw invalidField(
+    'observed.time',
+    `An entry stands at ${last}, after this time. Give a later time, or correct that entry first.`,
+  )
 }

@@ -19,9 +19,10 @@ export function readEndForm(ctx: Ctx, { episodeId }: { episodeId: string }): End
   return {
     ...base,
     episode: toEpisodeDto(found.episode),
-    signed: decision && isForExtubation
-      ? { choice: decision.choice, signedAt: decision.recordedAt, byName: findPersonName(ctx.db, decision.recordedBy) ?? '' }
-      : null,
+    signed:
+      decision && isForExtubation
+        ? { choice: decision.choice, signedAt: decision.recordedAt, byName: findPersonName(ctx.db, decision.recordedBy) ?? '' }
+        : null,
     isTrialRunning: trials.some((trial) => !trialEnds.some((end) => end.trialId === trial.entryId)),
     may: { end: mayHere(ctx.actor, found, 'episode.end') },
   }

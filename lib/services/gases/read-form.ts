@@ -12,8 +12,14 @@ export function readGasForm(ctx: Ctx, query: StepFormQuery): GasFormDto {
   const found = authorize(ctx, 'patient.read', { episodeId: query.episodeId })
   const row = findAmending(ctx, found, 'gas.record', query.amend, (id) => findGasVersion(ctx.db, id))
   const amending = row && {
-    ...nameVersion(ctx, row), ph: row.ph, paCO2MmHg: row.paCO2MmHg, paO2MmHg: row.paO2MmHg, fio2Fraction: row.fio2Fraction,
-    bicarbonateMmolPerL: row.bicarbonateMmolPerL, lactateMmolPerL: row.lactateMmolPerL, haemoglobinGPerDl: row.haemoglobinGPerDl,
+    ...nameVersion(ctx, row),
+    ph: row.ph,
+    paCO2MmHg: row.paCO2MmHg,
+    paO2MmHg: row.paO2MmHg,
+    fio2Fraction: row.fio2Fraction,
+    bicarbonateMmolPerL: row.bicarbonateMmolPerL,
+    lactateMmolPerL: row.lactateMmolPerL,
+    haemoglobinGPerDl: row.haemoglobinGPerDl,
   }
   return { ...readBedsideForm(ctx, found), amending, may: { record: mayHere(ctx.actor, found, 'gas.record') } }
 }

@@ -15,7 +15,10 @@ export function recordGas(ctx: Ctx, input: RecordGasInput): { id: string } {
     const { columns } = placeEntry(tx, ctx, found, { observed, amends, findAmended: (id) => findGasVersion(tx, id) })
     const row = insertGas(tx, { ...columns, ...values })
     writeAudit(tx, ctx, {
-      action: amends ? 'gas.amend' : 'gas.record', unitId: columns.unitId, subject: { kind: 'gas', id: row.id }, after: row,
+      action: amends ? 'gas.amend' : 'gas.record',
+      unitId: columns.unitId,
+      subject: { kind: 'gas', id: row.id },
+      after: row,
     })
     return { id: row.id }
   })

@@ -14,13 +14,34 @@ export function correctPatient(ctx: Ctx, input: CorrectPatientInput): { version:
   return once(ctx, 'patient.correct', input, (tx) => {
     refuseImpossibleBirth(input.birthDate, ctx.now, unit.timeZone)
     const holder = findPatientByRecordNumber(tx, patient.hospitalId, input.recordNumber)
-    if (holder && holder.id !== patient.id) throw invalidField('recordNumber', 'Another patient has this record number. Check the number.')
+    if (holder && holder.id !== patient.id)
+      throw invalidField('recordNumber', 'Another patient has this record number. Check the number.')
     const { recordNumber, familyName, givenName, birthDate, sex, heightCm, weightKg } = input
-    const after = updatePatient(tx, { id: patient.id, version: input.version }, {
-      recordNumber, familyName, givenName, birthDate, sex, heightCm, weightKg,
+    const after = updatePatient(
+      tx,
+      { id: patient.id, version: input.version },
+      {
+        recordNumber,
+        familyName,
+        givenName,
+        birthDate,
+        sex,
+        heightCm,
+        weightKg,
+      },
+    )
+    if (!after)
+      throw new AppError(
+        'CONFLICT',
+        'Someone changed these details in the meantime. Reload the page to see them; nothing was changed.',
+      )
+    writeAudit(tx, ctx, {
+      action: 'patient.correct',
+      unitId: unit.id,
+      subject: { kind: 'patient', id: patient.id },
+      before: patient,
+      after,
     })
-    if (!after) throw new AppError('CONFLICT', 'Someone changed these details in the meantime. Reload the page to see them; nothing was changed.')
-    writeAudit(tx, ctx, { action: 'patient.correct', unitId: unit.id, subject: { kind: 'patient', id: patient.id }, before: patient, after })
     return { version: after.version }
   })
 }

@@ -22,7 +22,10 @@ export function listPatients(ctx: Ctx, input: { unitId: string }): PatientListDt
     ageYears: ageYears(patient.birthDate, today),
     sex: patient.sex,
     admittedAt: stay.startedAt,
-    episode: episode && { ...episode, ventilatorDayNumber: ventilatorDayNumber(localDay(episode.startedAt, unit.timeZone), today) },
+    episode: episode && {
+      ...episode,
+      ventilatorDayNumber: ventilatorDayNumber(localDay(episode.startedAt, unit.timeZone), today),
+    },
     lastEndedAt,
   }))
   return {

@@ -1,5 +1,11 @@
 import 'server-only'
-import { listAllVersions, listPersonNames, listProtocolContents, listProtocolNumbers, type AllVersions } from '@/db/queries/patient-record'
+import {
+  listAllVersions,
+  listPersonNames,
+  listProtocolContents,
+  listProtocolNumbers,
+  type AllVersions,
+} from '@/db/queries/patient-record'
 import type { EpisodeRow, PatientInUnit } from '@/lib/access/door'
 import { mayInUnit } from '@/lib/access/policy'
 import type { PatientDayDto, RecordedDto } from '@/lib/schemas/patient-page'
@@ -15,9 +21,18 @@ import { toRecorded } from './to-recorded'
 // no-door: called by patients/read after its door
 export function readRecord(ctx: Ctx, found: PatientInUnit, episodeId: string): RecordedDto[] {
   const all = listAllVersions(ctx.db, episodeId)
-  const names = listPersonNames(ctx.db, distinct(all, (row) => row.recordedBy))
-  const numbers = listProtocolNumbers(ctx.db, distinct(all, (row) => row.protocolVersionId))
-  const judging = listProtocolContents(ctx.db, distinctOf([...all.holdEnd, ...all.trialEnd], (row) => row.protocolVersionId))
+  const names = listPersonNames(
+    ctx.db,
+    distinct(all, (row) => row.recordedBy),
+  )
+  const numbers = listProtocolNumbers(
+    ctx.db,
+    distinct(all, (row) => row.protocolVersionId),
+  )
+  const judging = listProtocolContents(
+    ctx.db,
+    distinctOf([...all.holdEnd, ...all.trialEnd], (row) => row.protocolVersionId),
+  )
   const { actor } = ctx
   return toRecorded(all, {
     personName: (id) => names.get(id) ?? 'Unknown',
@@ -28,7 +43,10 @@ export function readRecord(ctx: Ctx, found: PatientInUnit, episodeId: string): R
       return nameRules(rules ?? [], ruleIds).map(({ words }) => words)
     },
     mayAmend: (action, recordedBy) =>
-      !found.isOpening && actor.kind === 'person' && mayInUnit(actor.memberships, action, found.unit.id) && mayAmend(ctx, found.unit.id, recordedBy),
+      !found.isOpening &&
+      actor.kind === 'person' &&
+      mayInUnit(actor.memberships, action, found.unit.id) &&
+      mayAmend(ctx, found.unit.id, recordedBy),
   })
 }
 

@@ -43,17 +43,29 @@ export function readPatient(ctx: Ctx, input: { patientId: string; episodeId?: st
   return {
     nowMs: ctx.now,
     unit: {
-      id: unit.id, name: unit.name, timeZone: unit.timeZone, dayTrackFromHour: unit.dayTrackFromHour, dayTrackToHour: unit.dayTrackToHour,
+      id: unit.id,
+      name: unit.name,
+      timeZone: unit.timeZone,
+      dayTrackFromHour: unit.dayTrackFromHour,
+      dayTrackToHour: unit.dayTrackToHour,
     },
     isOpening: found.isOpening,
     openUntil: openUntil(ctx, found),
     patient: head,
     ...body,
     stay: {
-      id: stay.id, bedId: stay.bedId, bedLabel: findBedLabel(ctx.db, stay.bedId) ?? '', startedAt: stay.startedAt, endedAt: stay.endedAt, end: stay.end,
+      id: stay.id,
+      bedId: stay.bedId,
+      bedLabel: findBedLabel(ctx.db, stay.bedId) ?? '',
+      startedAt: stay.startedAt,
+      endedAt: stay.endedAt,
+      end: stay.end,
     },
     episode: episode ? toEpisodeDto(episode) : null,
-    earlierEpisodes: episodes.filter((one) => one.id !== episode?.id).map(toEpisodeDto).reverse(),
+    earlierEpisodes: episodes
+      .filter((one) => one.id !== episode?.id)
+      .map(toEpisodeDto)
+      .reverse(),
     tidalVolumePerKg: toTidalVolumePerKg(latest.settings, patient, head.isAdult),
     ...readDay(ctx, found, episode, today),
     latest,
@@ -65,7 +77,8 @@ export function readPatient(ctx: Ctx, input: { patientId: string; episodeId?: st
 
 function auditOpening(ctx: Ctx, { unit, patient }: PatientInUnit): void {
   ctx.db.transaction(
-    (tx) => writeAudit(tx, ctx, { action: 'patient.read_by_opening', unitId: unit.id, subject: { kind: 'patient', id: patient.id } }),
+    (tx) =>
+      writeAudit(tx, ctx, { action: 'patient.read_by_opening', unitId: unit.id, subject: { kind: 'patient', id: patient.id } }),
     { behavior: 'immediate' },
   )
 }
@@ -86,7 +99,10 @@ function readDay(ctx: Ctx, found: PatientInUnit, episode: EpisodeRow | undefined
   }
   if (!episode) {
     return {
-      ...axis, ventilatorDayNumber: null, move: null, moveHref: null,
+      ...axis,
+      ventilatorDayNumber: null,
+      move: null,
+      moveHref: null,
       track: { screens: [], holds: [], pairingWindow: null, trials: [], decisions: [] },
     }
   }
@@ -115,6 +131,7 @@ function latestGas(recorded: RecordedDto[]): GasDto | null {
 
 function listMay(ctx: Ctx, { isOpening, unit }: PatientInUnit): PatientActions {
   const { actor } = ctx
-  const may = (action: (typeof PATIENT_ACTIONS)[number]) => actor.kind === 'person' && !isOpening && mayInUnit(actor.memberships, action, unit.id)
+  const may = (action: (typeof PATIENT_ACTIONS)[number]) =>
+    actor.kind === 'person' && !isOpening && mayInUnit(actor.memberships, action, unit.id)
   return Object.fromEntries(PATIENT_ACTIONS.map((action) => [action, may(action)])) as PatientActions
 }

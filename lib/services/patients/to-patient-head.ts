@@ -32,18 +32,26 @@ function weigh(patient: PatientRow, adult: boolean | null) {
 }
 
 /** Predicted body weight in kg, or why there is none. */
-export function toBodyDto(patient: PatientRow, adult: boolean | null): Pick<PatientPageDto, 'predictedBodyWeightKg' | 'isHeightOutsideRange'> {
+export function toBodyDto(
+  patient: PatientRow,
+  adult: boolean | null,
+): Pick<PatientPageDto, 'predictedBodyWeightKg' | 'isHeightOutsideRange'> {
   const weight = weigh(patient, adult)
   if (!weight.known) return { predictedBodyWeightKg: weight, isHeightOutsideRange: false }
   return { predictedBodyWeightKg: { known: true, value: weight.value }, isHeightOutsideRange: weight.isOutsideRange }
 }
 
 /** Tidal volume per kg of predicted body weight from settings: the measured volume, else the set one. */
-export function toTidalVolumePerKg(settings: SettingsDto | null, patient: PatientRow, adult: boolean | null): PatientPageDto['tidalVolumePerKg'] {
+export function toTidalVolumePerKg(
+  settings: SettingsDto | null,
+  patient: PatientRow,
+  adult: boolean | null,
+): PatientPageDto['tidalVolumePerKg'] {
   const volume = settings?.measuredTidalVolumeMl ?? settings?.setTidalVolumeMl ?? null
   const from = settings === null || volume === null ? null : settings.measuredTidalVolumeMl === null ? 'set' : 'measured'
   return {
-    reading: tidalVolumePerKg({ tidalVolumeMl: volume, predictedBodyWeight: weigh(patient, adult) }), from,
+    reading: tidalVolumePerKg({ tidalVolumeMl: volume, predictedBodyWeight: weigh(patient, adult) }),
+    from,
     observedAt: from === null ? null : (settings?.observedAt ?? null),
   }
 }

@@ -15,23 +15,37 @@ export function toTrends(recorded: RecordedDto[], isAdult: boolean | null): Tren
       const { entry } = one
       const breathsPerMin = entry.measuredRatePerMin
       const tidalVolumeMl = entry.measuredTidalVolumeMl
-      return [{
-        atMs: entry.observedAt, fio2Fraction: entry.fio2Fraction, peepCmH2O: entry.peepCmH2O, ratePerMin: breathsPerMin, tidalVolumeMl,
-        spo2Percent: entry.spo2Percent, minuteVentilationLPerMin: valueOf(minuteVentilation({ breathsPerMin, tidalVolumeMl, isAdult })),
-      }]
+      return [
+        {
+          atMs: entry.observedAt,
+          fio2Fraction: entry.fio2Fraction,
+          peepCmH2O: entry.peepCmH2O,
+          ratePerMin: breathsPerMin,
+          tidalVolumeMl,
+          spo2Percent: entry.spo2Percent,
+          minuteVentilationLPerMin: valueOf(minuteVentilation({ breathsPerMin, tidalVolumeMl, isAdult })),
+        },
+      ]
     }),
     rsbi: current.flatMap((one): TrendsDto['rsbi'] => {
       const readings = one.kind === 'screen' || one.kind === 'trial_observation' ? one.entry.readings : null
-      const value = readings && valueOf(breathingIndex({ breathsPerMin: readings.breathsPerMin, tidalVolumeMl: readings.tidalVolumeMl, isAdult }))
+      const value =
+        readings &&
+        valueOf(breathingIndex({ breathsPerMin: readings.breathsPerMin, tidalVolumeMl: readings.tidalVolumeMl, isAdult }))
       return value === null ? [] : [{ atMs: one.entry.observedAt, value, from: one.kind === 'screen' ? 'screen' : 'trial' }]
     }),
     gases: current.flatMap((one) => {
       if (one.kind !== 'gas') return []
       const { entry } = one
-      return [{
-        atMs: entry.observedAt, ph: entry.ph, paCO2MmHg: entry.paCO2MmHg, paO2MmHg: entry.paO2MmHg,
-        pfRatio: valueOf(pfRatio({ paO2MmHg: entry.paO2MmHg, fio2Fraction: entry.fio2Fraction, isAdult })),
-      }]
+      return [
+        {
+          atMs: entry.observedAt,
+          ph: entry.ph,
+          paCO2MmHg: entry.paCO2MmHg,
+          paO2MmHg: entry.paO2MmHg,
+          pfRatio: valueOf(pfRatio({ paO2MmHg: entry.paO2MmHg, fio2Fraction: entry.fio2Fraction, isAdult })),
+        },
+      ]
     }),
   }
 }

@@ -24,9 +24,18 @@ export function readSettingsForm(ctx: Ctx, query: StepFormQuery): SettingsFormDt
 
 function toSettingsDto(ctx: Ctx, row: typeof settings.$inferSelect): SettingsDto {
   return {
-    ...nameVersion(ctx, row), mode: row.mode, fio2Fraction: row.fio2Fraction, peepCmH2O: row.peepCmH2O, setRatePerMin: row.setRatePerMin,
-    setTidalVolumeMl: row.setTidalVolumeMl, inspiratoryPressureCmH2O: row.inspiratoryPressureCmH2O, pressureSupportCmH2O: row.pressureSupportCmH2O,
-    measuredRatePerMin: row.measuredRatePerMin, measuredTidalVolumeMl: row.measuredTidalVolumeMl, peakPressureCmH2O: row.peakPressureCmH2O,
-    plateauPressureCmH2O: row.plateauPressureCmH2O, spo2Percent: row.spo2Percent,
+    ...nameVersion(ctx, row),
+    mode: row.mode,
+    fio2Fraction: row.fio2Fraction,
+    peepCmH2O: row.peepCmH2O,
+    setRatePerMin: row.setRatePerMin,
+    setTidalVolumeMl: row.setTidalVolumeMl,
+    inspiratoryPressureCmH2O: row.inspiratoryPressureCmH2O,
+    pressureSupportCmH2O: row.pressureSupportCmH2O,
+    measuredRatePerMin: row.measuredRatePerMin,
+    measuredTidalVolumeMl: row.measuredTidalVolumeMl,
+    peakPressureCmH2O: row.peakPressureCmH2O,
+    plateauPressureCmH2O: row.plateauPressureCmH2O,
+    spo2Percent: row.spo2Percent,
   }
 }

@@ -15,7 +15,10 @@ export function recordSettings(ctx: Ctx, input: RecordSettingsInput): { id: stri
     const { columns } = placeEntry(tx, ctx, found, { observed, amends, findAmended: (id) => findSettingsVersion(tx, id) })
     const row = insertSettings(tx, { ...columns, ...values })
     writeAudit(tx, ctx, {
-      action: amends ? 'settings.amend' : 'settings.record', unitId: columns.unitId, subject: { kind: 'settings', id: row.id }, after: row,
+      action: amends ? 'settings.amend' : 'settings.record',
+      unitId: columns.unitId,
+      subject: { kind: 'settings', id: row.id },
+      after: row,
     })
     return { id: row.id }
   })

@@ -18,7 +18,8 @@ export function endStay(ctx: Ctx, input: EndStayInput): { stayId: string } {
     if (!present || present.id !== input.stayId) {
       throw new AppError('CONFLICT', 'This patient was moved or left in the meantime. Reload the page; nothing was changed.')
     }
-    if (findOpenEpisode(tx, patient.id)) throw new AppError('PRECONDITION', 'Ventilation still runs. Record how and when it ended first.')
+    if (findOpenEpisode(tx, patient.id))
+      throw new AppError('PRECONDITION', 'Ventilation still runs. Record how and when it ended first.')
     const at = resolveObserved(input.observed, unit.timeZone, ctx.now)
     const lastEpisodeEnd = listEpisodesOfPatient(tx, patient.id).at(-1)?.endedAt ?? 0
     if (at <= present.startedAt || at < lastEpisodeEnd) {
@@ -27,7 +28,13 @@ export function endStay(ctx: Ctx, input: EndStayInput): { stayId: string } {
       throw invalidField('observed.time', `${what} ${earliest}. Give a later time.`)
     }
     const after = endStayRow(tx, present, { endedAt: at, end: input.end })
-    writeAudit(tx, ctx, { action: 'stay.end', unitId: unit.id, subject: { kind: 'patient', id: patient.id }, before: present, after })
+    writeAudit(tx, ctx, {
+      action: 'stay.end',
+      unitId: unit.id,
+      subject: { kind: 'patient', id: patient.id },
+      before: present,
+      after,
+    })
     return { stayId: present.id }
   })
 }

@@ -18,7 +18,11 @@ export function moveStay(ctx: Ctx, input: MoveStayInput): { stayId: string } {
   return once(ctx, 'stay.move', input, (tx) => {
     const present = findOpenStay(tx, patient.id)
     if (!present) throw new AppError('PRECONDITION', 'This patient is in no bed now. Admit the patient to a bed first.')
-    if (present.id !== input.stayId) throw new AppError('CONFLICT', 'This patient was moved in the meantime. Reload the page to see the bed; nothing was changed.')
+    if (present.id !== input.stayId)
+      throw new AppError(
+        'CONFLICT',
+        'This patient was moved in the meantime. Reload the page to see the bed; nothing was changed.',
+      )
     const target = findUnitOfHospital(tx, input.unitId, patient.hospitalId)
     if (!target) throw invalidField('unitId', 'This unit is not in use in this hospital. Choose another unit.')
     if (input.bedId === present.bedId) throw invalidField('bedId', 'The patient is in this bed already. Choose another bed.')

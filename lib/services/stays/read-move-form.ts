@@ -10,12 +10,17 @@ import { AppError } from '@/lib/shared/errors'
 /** What the form for a move shows: where the patient is, and the free beds of every unit of the hospital. */
 export function readMoveForm(ctx: Ctx, input: { patientId: string }): MoveFormDto {
   const { patient, stay, unit } = authorize(ctx, 'stay.move', { patientId: input.patientId })
-  if (stay.endedAt !== null) throw new AppError('PRECONDITION', 'This patient is in no bed now. Admit the patient to a bed first.')
+  if (stay.endedAt !== null)
+    throw new AppError('PRECONDITION', 'This patient is in no bed now. Admit the patient to a bed first.')
   return {
     nowMs: ctx.now,
     timeZone: unit.timeZone,
     patient: { id: patient.id, familyName: patient.familyName, givenName: patient.givenName },
     stay: { id: stay.id, unitId: unit.id, bedLabel: findBedLabel(ctx.db, stay.bedId) ?? '', startedAt: stay.startedAt },
-    units: listUnitsOfHospital(ctx.db, patient.hospitalId).map(({ id, name }) => ({ id, name, freeBeds: listFreeBeds(ctx.db, id) })),
+    units: listUnitsOfHospital(ctx.db, patient.hospitalId).map(({ id, name }) => ({
+      id,
+      name,
+      freeBeds: listFreeBeds(ctx.db, id),
+    })),
   }
 }

@@ -17,6 +17,7 @@ export function requireFreeBed(tx: Tx, { bedId, unit, at, now }: Wanted) {
   if (!occupation) return bed
   if (occupation.endedAt === null) throw invalidField('bedId', `Bed ${bed.label} is taken. Choose a free bed.`)
   throw invalidField(
-    'bedId', `Bed ${bed.label} was taken until ${formatTime(occupation.endedAt, unit.timeZone, now)}. Choose another bed, or give a later time.`,
+    'bedId',
+    `Bed ${bed.label} was taken until ${formatTime(occupation.endedAt, unit.timeZone, now)}. Choose another bed, or give a later time.`,
   )
 }

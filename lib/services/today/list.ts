@@ -31,18 +31,33 @@ export function listToday(ctx: Ctx, input: { unitId: string }): TodayDto {
     const record = toDayRecord(row.episode, isAdult(ageYears(row.birthDate, clock.day)), grouped, find, ctx.now)
     const move = nextMove({ protocol: inForce.content, record, clock })
     const settings = settingsOf.get(row.episode.id)
-    const parts = { row, record, move, settings, day: clock.day, timeZone: unit.timeZone, pairingWindowMin: inForce.content.pairingWindowMin }
+    const parts = {
+      row,
+      record,
+      move,
+      settings,
+      day: clock.day,
+      timeZone: unit.timeZone,
+      pairingWindowMin: inForce.content.pairingWindowMin,
+    }
     return { row: toTodayRow(parts), record }
   })
   return {
     unit: {
-      id: unit.id, name: unit.name, timeZone: unit.timeZone, dayTrackFromHour: unit.dayTrackFromHour, dayTrackToHour: unit.dayTrackToHour,
+      id: unit.id,
+      name: unit.name,
+      timeZone: unit.timeZone,
+      dayTrackFromHour: unit.dayTrackFromHour,
+      dayTrackToHour: unit.dayTrackToHour,
     },
     day: clock.day,
     trackFromMs: rememberedMoment(clock.day, unit.dayTrackFromHour * 60, unit.timeZone),
     trackToMs: rememberedMoment(clock.day, unit.dayTrackToHour * 60, unit.timeZone),
     nowMs: ctx.now,
-    counts: countRows(listed.filter(({ row }) => row.endedAtMs === null), clock.day),
+    counts: countRows(
+      listed.filter(({ row }) => row.endedAtMs === null),
+      clock.day,
+    ),
     rows: listed.map(({ row }) => row),
     emptyBeds: listFreeBeds(ctx.db, unit.id).map((bed) => bed.label),
   }
@@ -61,7 +76,9 @@ function countRows(listed: { row: TodayRowDto; record: DayRecord }[], day: strin
     ready: count(({ record }) => latestScreenOf(record, day)?.result === 'ready'),
     onHold: count(({ record }) => record.holds.some((hold) => hold.start === 'started' && hold.endedMs === null)),
     onTrial: count(({ record }) => record.trials.some((trial) => trial.endedMs === null)),
-    decisionsOwed: count(({ row }) => row.move.kind === 'move' && (row.move.step === 'decide' || row.move.step === 'decide_again')),
+    decisionsOwed: count(
+      ({ row }) => row.move.kind === 'move' && (row.move.step === 'decide' || row.move.step === 'decide_again'),
+    ),
     overdue: count(({ row }) => row.move.kind === 'move' && row.move.isOverdue),
   }
 }

@@ -33,7 +33,13 @@ export function groupDayEntries(entries: DayEntries): GroupedEntries {
  * One episode's record as the core takes it. A running hold or trial is judged by the protocol version that it began under, up to
  * `nowMs`; an ended one keeps the rules that were recorded with its end.
  */
-export function toDayRecord(episode: EpisodePart, isAdult: boolean | null, grouped: GroupedEntries, findProtocol: FindProtocol, nowMs: number): DayRecord {
+export function toDayRecord(
+  episode: EpisodePart,
+  isAdult: boolean | null,
+  grouped: GroupedEntries,
+  findProtocol: FindProtocol,
+  nowMs: number,
+): DayRecord {
   return {
     episodeStartedMs: episode.startedAt,
     episodeEndedMs: episode.endedAt,
@@ -57,7 +63,11 @@ function toDayScreen(row: DayEntries['screens'][number]): DayScreen {
   const marked = (mark: CriterionMark): ScreenCriterion[] =>
     criteria.filter((criterion) => criterion.mark === mark).map(({ criterion }) => criterion)
   return {
-    ventilatorDay: row.ventilatorDay, observedMs: row.observedAt, result: row.result, excuse: row.excuse, notMet: marked('not_met'),
+    ventilatorDay: row.ventilatorDay,
+    observedMs: row.observedAt,
+    result: row.result,
+    excuse: row.excuse,
+    notMet: marked('not_met'),
     notAssessed: marked('not_assessed'),
   }
 }
@@ -69,15 +79,22 @@ function parseReadings(json: string): ObservedReadings {
 
 function toLooks(observations: { observedAt: number; readingsJson: string | null }[]): Observation[] {
   return observations.flatMap(({ observedAt, readingsJson }) =>
-    readingsJson === null ? [] : [{ atMs: observedAt, readings: parseReadings(readingsJson) }])
+    readingsJson === null ? [] : [{ atMs: observedAt, readings: parseReadings(readingsJson) }],
+  )
 }
 
-function toDayHold(row: DayEntries['holds'][number], grouped: GroupedEntries, findProtocol: FindProtocol, nowMs: number): DayHold {
+function toDayHold(
+  row: DayEntries['holds'][number],
+  grouped: GroupedEntries,
+  findProtocol: FindProtocol,
+  nowMs: number,
+): DayHold {
   const observations = grouped.holdObservations.get(row.entryId) ?? []
   const end = grouped.holdEnds.get(row.entryId)?.[0]
-  const met = end || row.start !== 'started'
-    ? { ids: end?.rulesMet ?? [], firstMetMs: null }
-    : rulesMet(judgeStop(findProtocol(row.protocolVersionId).hold.failRules, null, toLooks(observations), nowMs))
+  const met =
+    end || row.start !== 'started'
+      ? { ids: end?.rulesMet ?? [], firstMetMs: null }
+      : rulesMet(judgeStop(findProtocol(row.protocolVersionId).hold.failRules, null, toLooks(observations), nowMs))
   return {
     ventilatorDay: row.ventilatorDay,
     start: row.start,
@@ -97,12 +114,24 @@ function presentItems(safety: DayEntries['holds'][number]['safety']): DayHold['u
   return items.filter((item) => safety?.[item] === true)
 }
 
-function toDayTrial(row: DayEntries['trials'][number], grouped: GroupedEntries, findProtocol: FindProtocol, nowMs: number): DayTrial {
+function toDayTrial(
+  row: DayEntries['trials'][number],
+  grouped: GroupedEntries,
+  findProtocol: FindProtocol,
+  nowMs: number,
+): DayTrial {
   const observations = grouped.trialObservations.get(row.entryId) ?? []
   const end = grouped.trialEnds.get(row.entryId)?.[0]
   const met = end
     ? { ids: end.rulesMet, firstMetMs: null }
-    : rulesMet(judgeStop(findProtocol(row.protocolVersionId).trial.stopRules, parseReadings(row.baselineJson), toLooks(observations), nowMs))
+    : rulesMet(
+        judgeStop(
+          findProtocol(row.protocolVersionId).trial.stopRules,
+          parseReadings(row.baselineJson),
+          toLooks(observations),
+          nowMs,
+        ),
+      )
   return {
     ventilatorDay: row.ventilatorDay,
     startedMs: row.observedAt,

@@ -9,7 +9,13 @@ import { toDayTrack } from './to-day-track'
 export type Ventilated = ReturnType<typeof listVentilatedOfUnit>[number]
 type Settings = ReturnType<typeof listLatestSettings>[number]
 type Parts = {
-  row: Ventilated; record: DayRecord; move: NextMove; settings: Settings | undefined; day: string; timeZone: string; pairingWindowMin: number
+  row: Ventilated
+  record: DayRecord
+  move: NextMove
+  settings: Settings | undefined
+  day: string
+  timeZone: string
+  pairingWindowMin: number
 }
 
 /** One patient's row on Today. `day` is the unit's calendar day now. */
@@ -26,7 +32,12 @@ export function toTodayRow({ row, record, move, settings, day, timeZone, pairing
     ventilatorDayNumber: ventilatorDayNumber(rememberedDay(episode.startedAt, timeZone), lastDay),
     airway: episode.airway,
     settings: settings
-      ? { mode: settings.mode, fio2Fraction: settings.fio2Fraction, peepCmH2O: settings.peepCmH2O, observedAtMs: settings.observedAt }
+      ? {
+          mode: settings.mode,
+          fio2Fraction: settings.fio2Fraction,
+          peepCmH2O: settings.peepCmH2O,
+          observedAtMs: settings.observedAt,
+        }
       : null,
     track: toDayTrack(record, day, pairingWindowMin),
     move,

@@ -10,15 +10,24 @@ import { makeRequest, makeSession, routeParams, serveDatabase } from '../../help
 import { at, expectDoor, expectNothingLeft, expectOnce, expectRefusal } from '../../helpers/verb-checks'
 
 const given = (episodeId: string, over: Partial<RecordAirwayInput> = {}): RecordAirwayInput => ({
-  episodeId, observed: at(NOW - 30 * MINUTE_MS), amends: null, event: 'tracheostomy_placed', reason: 'Planned', ...over,
+  episodeId,
+  observed: at(NOW - 30 * MINUTE_MS),
+  amends: null,
+  event: 'tracheostomy_placed',
+  reason: 'Planned',
+  ...over,
 })
-const airwayOf = (world: ReturnType<typeof makeWorld>) => world.db.select().from(episodes).where(eq(episodes.id, world.episode.id)).get()
+const airwayOf = (world: ReturnType<typeof makeWorld>) =>
+  world.db.select().from(episodes).where(eq(episodes.id, world.episode.id)).get()
 
 describe('recordAirway', () => {
   it('writes the event and changes the episode’s airway, with its audit row', () => {
     const world = makeWorld()
     const { id } = recordAirway(makeCtx(world.db, world.physician), given(world.episode.id))
-    expect(world.db.select().from(airwayEvents).where(eq(airwayEvents.id, id)).get()).toMatchObject({ event: 'tracheostomy_placed', reason: 'Planned' })
+    expect(world.db.select().from(airwayEvents).where(eq(airwayEvents.id, id)).get()).toMatchObject({
+      event: 'tracheostomy_placed',
+      reason: 'Planned',
+    })
     expect(airwayOf(world)).toMatchObject({ airway: 'tracheostomy', version: 2, endedAt: null })
     expect(auditRows(world.db, 'airway.record')).toMatchObject([{ subjectId: id, before: { airway: 'endotracheal_tube' } }])
   })
@@ -33,7 +42,10 @@ describe('recordAirway', () => {
   it('corrects its time without changing the airway again', () => {
     const world = makeWorld()
     const first = recordAirway(makeCtx(world.db, world.rt), given(world.episode.id))
-    recordAirway(makeCtx(world.db, world.rt), given(world.episode.id, { observed: at(NOW - HOUR_MS), amends: { id: first.id, reason: 'wrong hour' } }))
+    recordAirway(
+      makeCtx(world.db, world.rt),
+      given(world.episode.id, { observed: at(NOW - HOUR_MS), amends: { id: first.id, reason: 'wrong hour' } }),
+    )
     expect(airwayOf(world)).toMatchObject({ airway: 'tracheostomy', version: 2 })
     expect(auditRows(world.db, 'airway.amend')).toHaveLength(1)
   })
@@ -67,6 +79,8 @@ describe('recordAirway', () => {
     const { cookie } = makeSession(world.db, world.rt.id)
     const { episodeId, ...body } = given(world.episode.id, { observed: at(Date.now() - MINUTE_MS) })
     expect((await POST(makeRequest('/api/x', { body, cookie }), routeParams({ episodeId }))).status).toBe(200)
-    expect((await POST(makeRequest('/api/x', { body: { ...body, event: 'extubated' }, cookie }), routeParams({ episodeId }))).status).toBe(422)
+    expect(
+      (await POST(makeRequest('/api/x', { body: { ...body, event: 'extubated' }, cookie }), routeParams({ episodeId }))).status,
+    ).toBe(422)
   })
 })

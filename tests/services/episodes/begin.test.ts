@@ -15,25 +15,58 @@ function makeUnventilated() {
   const bed = world.medical.beds[1]
   if (!bed) throw new Error('no bed')
   const other = makePatient(world.db, world.hospital.id, world.rt.id)
-  const otherStay = makeStay(world.db, { patientId: other.id, unitId: world.medical.unit.id, bedId: bed.id, startedAt: NOW - 10 * HOUR_MS })
+  const otherStay = makeStay(world.db, {
+    patientId: other.id,
+    unitId: world.medical.unit.id,
+    bedId: bed.id,
+    startedAt: NOW - 10 * HOUR_MS,
+  })
   return { ...world, other, otherStay }
 }
 const given = (patientId: string, over: Partial<BeginEpisodeInput> = {}): BeginEpisodeInput => ({
-  patientId, observed: at(NOW - HOUR_MS), start: 'intubated', airway: 'endotracheal_tube', ...over,
+  patientId,
+  observed: at(NOW - HOUR_MS),
+  start: 'intubated',
+  airway: 'endotracheal_tube',
+  ...over,
 })
 function endedEpisode(world: ReturnType<typeof makeUnventilated>, end: EpisodeEnd, endedAt: number) {
-  return makeEpisode(world.db, { ...world.place, patientId: world.other.id }, { startedAt: endedAt - 24 * HOUR_MS, endedAt, end, endRecordedAt: endedAt, endRecordedBy: world.rt.id })
+  return makeEpisode(
+    world.db,
+    { ...world.place, patientId: world.other.id },
+    { startedAt: endedAt - 24 * HOUR_MS, endedAt, end, endRecordedAt: endedAt, endRecordedBy: world.rt.id },
+  )
 }
 
 describe('beginEpisode', () => {
   it('begins the episode with its airway event and its audit row', () => {
     const world = makeUnventilated()
     const { episodeId } = beginEpisode(makeCtx(world.db, world.rt), given(world.other.id))
-    expect(world.db.select().from(episodes).all().find((row) => row.id === episodeId)).toMatchObject({
-      patientId: world.other.id, startedAt: NOW - HOUR_MS, start: 'intubated', airway: 'endotracheal_tube', endedAt: null, recordedBy: world.rt.id,
+    expect(
+      world.db
+        .select()
+        .from(episodes)
+        .all()
+        .find((row) => row.id === episodeId),
+    ).toMatchObject({
+      patientId: world.other.id,
+      startedAt: NOW - HOUR_MS,
+      start: 'intubated',
+      airway: 'endotracheal_tube',
+      endedAt: null,
+      recordedBy: world.rt.id,
     })
-    expect(world.db.select().from(airwayEvents).all().find((row) => row.episodeId === episodeId)).toMatchObject({
-      event: 'intubated', observedAt: NOW - HOUR_MS, ventilatorDay: TODAY, unitId: world.medical.unit.id,
+    expect(
+      world.db
+        .select()
+        .from(airwayEvents)
+        .all()
+        .find((row) => row.episodeId === episodeId),
+    ).toMatchObject({
+      event: 'intubated',
+      observedAt: NOW - HOUR_MS,
+      ventilatorDay: TODAY,
+      unitId: world.medical.unit.id,
     })
     expect(auditRows(world.db, 'episode.begin')).toMatchObject([{ subjectId: episodeId, actorId: world.rt.id }])
   })
@@ -56,17 +89,35 @@ describe('beginEpisode', () => {
     const world = makeUnventilated()
     const [, , third] = world.medical.beds
     world.db.$client.prepare("update stays set ended_at = ?, end = 'moved' where id = ?").run(NOW - HOUR_MS, world.otherStay.id)
-    makeStay(world.db, { patientId: world.other.id, unitId: world.medical.unit.id, bedId: third?.id ?? '', startedAt: NOW - HOUR_MS })
-    expect(beginEpisode(makeCtx(world.db, world.rt), given(world.other.id, { observed: at(NOW - 3 * HOUR_MS) })).episodeId).toBeTruthy()
+    makeStay(world.db, {
+      patientId: world.other.id,
+      unitId: world.medical.unit.id,
+      bedId: third?.id ?? '',
+      startedAt: NOW - HOUR_MS,
+    })
+    expect(
+      beginEpisode(makeCtx(world.db, world.rt), given(world.other.id, { observed: at(NOW - 3 * HOUR_MS) })).episodeId,
+    ).toBeTruthy()
   })
 
   it('asks for reintubated within seven days of an extubation', () => {
     const world = makeUnventilated()
     endedEpisode(world, 'extubated', NOW - 9 * HOUR_MS)
     const ctx = makeCtx(world.db, world.rt)
-    expectRefusal(() => beginEpisode(ctx, given(world.other.id)), 'INVALID', 'start', /extubated at 2 Mar 23:00. Choose reintubated/)
+    expectRefusal(
+      () => beginEpisode(ctx, given(world.other.id)),
+      'INVALID',
+      'start',
+      /extubated at 2 Mar 23:00. Choose reintubated/,
+    )
     const { episodeId } = beginEpisode(ctx, given(world.other.id, { start: 'reintubated' }))
-    expect(world.db.select().from(airwayEvents).all().find((row) => row.episodeId === episodeId)?.event).toBe('reintubated')
+    expect(
+      world.db
+        .select()
+        .from(airwayEvents)
+        .all()
+        .find((row) => row.episodeId === episodeId)?.event,
+    ).toBe('reintubated')
   })
 
   it('takes an extubation of eight days ago as over', () => {
@@ -86,12 +137,19 @@ describe('beginEpisode', () => {
   it('refuses a start before the last episode ended', () => {
     const world = makeUnventilated()
     endedEpisode(world, 'extubated', NOW - 30 * MINUTE_MS)
-    expectRefusal(() => beginEpisode(makeCtx(world.db, world.rt), given(world.other.id, { start: 'reintubated' })), 'INVALID', 'observed.time', /ended at 07:30/)
+    expectRefusal(
+      () => beginEpisode(makeCtx(world.db, world.rt), given(world.other.id, { start: 'reintubated' })),
+      'INVALID',
+      'observed.time',
+      /ended at 07:30/,
+    )
   })
 
   it('refuses a patient who has left', () => {
     const world = makeUnventilated()
-    world.db.$client.prepare("update stays set ended_at = ?, end = 'left_unit' where id = ?").run(NOW - HOUR_MS, world.otherStay.id)
+    world.db.$client
+      .prepare("update stays set ended_at = ?, end = 'left_unit' where id = ?")
+      .run(NOW - HOUR_MS, world.otherStay.id)
     expectRefusal(() => beginEpisode(makeCtx(world.db, world.rt), given(world.other.id)), 'PRECONDITION')
   })
 
@@ -124,8 +182,12 @@ describe('beginEpisode', () => {
 
 describe('which airway goes with which start', () => {
   it.each([
-    ['intubated', 'endotracheal_tube', true], ['intubated', 'tracheostomy', false], ['reintubated', 'tracheostomy', false],
-    ['ventilator_on', 'tracheostomy', true], ['ventilator_on', 'endotracheal_tube', false], ['arrived_intubated', 'endotracheal_tube', true],
+    ['intubated', 'endotracheal_tube', true],
+    ['intubated', 'tracheostomy', false],
+    ['reintubated', 'tracheostomy', false],
+    ['ventilator_on', 'tracheostomy', true],
+    ['ventilator_on', 'endotracheal_tube', false],
+    ['arrived_intubated', 'endotracheal_tube', true],
     ['arrived_intubated', 'tracheostomy', true],
   ])('%s with %s: %s', (start, airway, isAccepted) => {
     const parsed = beginEpisodeSchema.safeParse({ ...given('p1'), start, airway })

@@ -16,14 +16,23 @@ const ENDED = NOW - 2 * HOUR_MS
 function makeEnded() {
   const world = makeWorld()
   world.db.update(episodes).set({ endedAt: ENDED, end: 'extubated', endRecordedAt: ENDED, endRecordedBy: world.nurse.id }).run()
-  world.db.insert(airwayEvents).values({
-    ...entryPlace(world.episode, { ...world.place, recordedBy: world.nurse.id }, ENDED), event: 'extubated', supportAfter: 'niv',
-  }).run()
+  world.db
+    .insert(airwayEvents)
+    .values({
+      ...entryPlace(world.episode, { ...world.place, recordedBy: world.nurse.id }, ENDED),
+      event: 'extubated',
+      supportAfter: 'niv',
+    })
+    .run()
   return world
 }
 const given = (world: World, over: Partial<CorrectEpisodeInput> = {}): CorrectEpisodeInput => ({
-  episodeId: world.episode.id, version: 1, began: { observed: at(world.episode.startedAt), start: 'intubated' },
-  ended: { observed: at(ENDED), end: 'extubated' }, reason: 'wrong hour', ...over,
+  episodeId: world.episode.id,
+  version: 1,
+  began: { observed: at(world.episode.startedAt), start: 'intubated' },
+  ended: { observed: at(ENDED), end: 'extubated' },
+  reason: 'wrong hour',
+  ...over,
 })
 const episodeOf = (world: World) => world.db.select().from(episodes).where(eq(episodes.id, world.episode.id)).get()
 const events = (world: World) => world.db.select().from(airwayEvents).all()
@@ -31,23 +40,44 @@ const events = (world: World) => world.db.select().from(airwayEvents).all()
 describe('correctEpisode', () => {
   it('moves the end and adds a version of its event; the old version stays', () => {
     const world = makeEnded()
-    correctEpisode(makeCtx(world.db, world.nurse), given(world, { ended: { observed: at(ENDED + HOUR_MS), end: 'self_extubated' } }))
-    expect(episodeOf(world)).toMatchObject({ endedAt: ENDED + HOUR_MS, end: 'self_extubated', version: 2, startedAt: world.episode.startedAt })
+    correctEpisode(
+      makeCtx(world.db, world.nurse),
+      given(world, { ended: { observed: at(ENDED + HOUR_MS), end: 'self_extubated' } }),
+    )
+    expect(episodeOf(world)).toMatchObject({
+      endedAt: ENDED + HOUR_MS,
+      end: 'self_extubated',
+      version: 2,
+      startedAt: world.episode.startedAt,
+    })
     const [, old, corrected] = events(world)
     expect(old).toMatchObject({ event: 'extubated', observedAt: ENDED, entryVersion: 1 })
     expect(corrected).toMatchObject({
-      event: 'self_extubated', observedAt: ENDED + HOUR_MS, entryVersion: 2, supersedesId: old?.id, amendReason: 'wrong hour', supportAfter: 'niv',
+      event: 'self_extubated',
+      observedAt: ENDED + HOUR_MS,
+      entryVersion: 2,
+      supersedesId: old?.id,
+      amendReason: 'wrong hour',
+      supportAfter: 'niv',
     })
     expect(events(world)).toHaveLength(3)
-    expect(auditRows(world.db, 'episode.correct')).toMatchObject([{ before: { endedAt: ENDED }, after: { reason: 'wrong hour' } }])
+    expect(auditRows(world.db, 'episode.correct')).toMatchObject([
+      { before: { endedAt: ENDED }, after: { reason: 'wrong hour' } },
+    ])
   })
 
   it('moves the beginning and adds a version of its event', () => {
     const world = makeWorld()
     const began = world.episode.startedAt - 2 * HOUR_MS
-    correctEpisode(makeCtx(world.db, world.rt), given(world, { began: { observed: at(began), start: 'arrived_intubated' }, ended: null }))
+    correctEpisode(
+      makeCtx(world.db, world.rt),
+      given(world, { began: { observed: at(began), start: 'arrived_intubated' }, ended: null }),
+    )
     expect(episodeOf(world)).toMatchObject({ startedAt: began, start: 'arrived_intubated', endedAt: null })
-    expect(events(world)).toMatchObject([{ event: 'intubated' }, { event: 'arrived_intubated', observedAt: began, entryVersion: 2 }])
+    expect(events(world)).toMatchObject([
+      { event: 'intubated' },
+      { event: 'arrived_intubated', observedAt: began, entryVersion: 2 },
+    ])
   })
 
   it('opens the episode again when it did not end after all, and withdraws the event', () => {
@@ -87,7 +117,12 @@ describe('correctEpisode', () => {
     makeEpisode(world.db, { ...world.place, patientId: world.patient.id }, { startedAt: next, start: 'reintubated' })
     const ctx = makeCtx(world.db, world.physician)
     expectRefusal(() => correctEpisode(ctx, given(world, { ended: null })), 'PRECONDITION')
-    expectRefusal(() => correctEpisode(ctx, given(world, { ended: { observed: at(NOW - HOUR_MS), end: 'extubated' } })), 'INVALID', 'ended.observed.time', /begun again/)
+    expectRefusal(
+      () => correctEpisode(ctx, given(world, { ended: { observed: at(NOW - HOUR_MS), end: 'extubated' } })),
+      'INVALID',
+      'ended.observed.time',
+      /begun again/,
+    )
   })
 
   it('refuses an end that does not go with the airway', () => {
@@ -131,6 +166,8 @@ describe('correctEpisode', () => {
     const { cookie } = makeSession(world.db, world.physician.id)
     const { episodeId, ...body } = given(world, { ended: null })
     expect((await POST(makeRequest('/api/x', { body, cookie }), routeParams({ episodeId }))).status).toBe(200)
-    expect((await POST(makeRequest('/api/x', { body: { ...body, reason: '' }, cookie }), routeParams({ episodeId }))).status).toBe(422)
+    expect(
+      (await POST(makeRequest('/api/x', { body: { ...body, reason: '' }, cookie }), routeParams({ episodeId }))).status,
+    ).toBe(422)
   })
 })

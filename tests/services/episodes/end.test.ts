@@ -13,23 +13,55 @@ import { at, expectDoor, expectNothingLeft, expectOnce, expectRefusal } from '..
 type World = ReturnType<typeof makeWorld>
 
 const given = (world: World, over: Partial<EndEpisodeInput> = {}): EndEpisodeInput => ({
-  episodeId: world.episode.id, version: 1, observed: at(NOW - 10 * MINUTE_MS), end: 'extubated', supportAfter: 'high_flow', reason: null, trialEnd: null, ...over,
+  episodeId: world.episode.id,
+  version: 1,
+  observed: at(NOW - 10 * MINUTE_MS),
+  end: 'extubated',
+  supportAfter: 'high_flow',
+  reason: null,
+  trialEnd: null,
+  ...over,
 })
 
 function sign(world: World, choice: DecisionChoice = 'extubate', signedAt: number = NOW - HOUR_MS) {
-  world.db.insert(decisions).values({
-    ...entryPlace(world.episode, { ...world.place, recordedBy: world.physician.id }, signedAt), choice, reasons: [], evidence: {}, contentHash: 'h', statement: 's',
-    lookAgainAt: choice === 'not_today' ? NOW + HOUR_MS : null,
-  }).run()
+  world.db
+    .insert(decisions)
+    .values({
+      ...entryPlace(world.episode, { ...world.place, recordedBy: world.physician.id }, signedAt),
+      choice,
+      reasons: [],
+      evidence: {},
+      contentHash: 'h',
+      statement: 's',
+      lookAgainAt: choice === 'not_today' ? NOW + HOUR_MS : null,
+    })
+    .run()
 }
 const BASELINE = {
-  breathsPerMin: 18, tidalVolumeMl: 420, spo2Percent: 96, heartRatePerMin: 84, systolicMmHg: 124, diastolicMmHg: 70, rass: 0, paCO2MmHg: null,
-  paO2MmHg: null, ph: null, signs: [],
+  breathsPerMin: 18,
+  tidalVolumeMl: 420,
+  spo2Percent: 96,
+  heartRatePerMin: 84,
+  systolicMmHg: 124,
+  diastolicMmHg: 70,
+  rass: 0,
+  paCO2MmHg: null,
+  paO2MmHg: null,
+  ph: null,
+  signs: [],
 }
 function runTrial(world: World, startedAt: number, plannedDurationMin = 30) {
-  return world.db.insert(trials).values({
-    ...entryPlace(world.episode, world.place, startedAt), technique: 't_piece', fio2Fraction: 0.4, plannedDurationMin, baseline: BASELINE,
-  }).returning().get()
+  return world.db
+    .insert(trials)
+    .values({
+      ...entryPlace(world.episode, world.place, startedAt),
+      technique: 't_piece',
+      fio2Fraction: 0.4,
+      plannedDurationMin,
+      baseline: BASELINE,
+    })
+    .returning()
+    .get()
 }
 const episodeOf = (world: World) => world.db.select().from(episodes).where(eq(episodes.id, world.episode.id)).get()
 const endEvents = (world: World) => world.db.select().from(airwayEvents).all().slice(1)
@@ -38,11 +70,20 @@ describe('endEpisode', () => {
   it('ends a planned extubation that was signed today, with its event, the support and the audit row', () => {
     const world = makeWorld()
     sign(world)
-    expect(endEpisode(makeCtx(world.db, world.rt), given(world))).toEqual({ episodeId: world.episode.id, endedAt: NOW - 10 * MINUTE_MS })
-    expect(episodeOf(world)).toMatchObject({
-      endedAt: NOW - 10 * MINUTE_MS, end: 'extubated', endRecordedAt: NOW, endRecordedBy: world.rt.id, version: 2,
+    expect(endEpisode(makeCtx(world.db, world.rt), given(world))).toEqual({
+      episodeId: world.episode.id,
+      endedAt: NOW - 10 * MINUTE_MS,
     })
-    expect(endEvents(world)).toMatchObject([{ event: 'extubated', supportAfter: 'high_flow', reason: null, observedAt: NOW - 10 * MINUTE_MS }])
+    expect(episodeOf(world)).toMatchObject({
+      endedAt: NOW - 10 * MINUTE_MS,
+      end: 'extubated',
+      endRecordedAt: NOW,
+      endRecordedBy: world.rt.id,
+      version: 2,
+    })
+    expect(endEvents(world)).toMatchObject([
+      { event: 'extubated', supportAfter: 'high_flow', reason: null, observedAt: NOW - 10 * MINUTE_MS },
+    ])
     expect(auditRows(world.db, 'episode.end')).toMatchObject([{ subjectId: world.episode.id, actorId: world.rt.id }])
   })
 
@@ -50,7 +91,13 @@ describe('endEpisode', () => {
     ['no decision at all', () => undefined],
     ['a decision against it today', (world: World) => sign(world, 'not_today')],
     ['a decision for it two days ago', (world: World) => sign(world, 'extubate', NOW - 47 * HOUR_MS)],
-    ['a later decision against it', (world: World) => { sign(world, 'extubate', NOW - 2 * HOUR_MS); sign(world, 'not_today', NOW - HOUR_MS) }],
+    [
+      'a later decision against it',
+      (world: World) => {
+        sign(world, 'extubate', NOW - 2 * HOUR_MS)
+        sign(world, 'not_today', NOW - HOUR_MS)
+      },
+    ],
   ])('asks for a reason when there is %s, and keeps it', (_name, prepare) => {
     const world = makeWorld()
     prepare(world)
@@ -65,7 +112,9 @@ describe('endEpisode', () => {
     const world = makeWorld()
     const midnight = NOW - 8 * HOUR_MS
     sign(world, 'comfort_extubation', midnight - 30 * MINUTE_MS)
-    expect(endEpisode(makeCtx(world.db, world.rt), given(world, { observed: at(midnight + 20 * MINUTE_MS) })).endedAt).toBe(midnight + 20 * MINUTE_MS)
+    expect(endEpisode(makeCtx(world.db, world.rt), given(world, { observed: at(midnight + 20 * MINUTE_MS) })).endedAt).toBe(
+      midnight + 20 * MINUTE_MS,
+    )
   })
 
   it('asks how a running trial ended before a planned extubation, and records it', () => {
@@ -76,9 +125,15 @@ describe('endEpisode', () => {
     expectRefusal(() => endEpisode(ctx, given(world)), 'INVALID', 'trialEnd.outcome', /trial is running/)
     expect(world.db.select().from(trialEnds).all()).toEqual([])
     endEpisode(ctx, given(world, { trialEnd: { outcome: 'passed' } }))
-    expect(world.db.select().from(trialEnds).all()).toMatchObject([{
-      trialId: trial.id, outcome: 'passed', rulesMet: [], observedAt: NOW - 10 * MINUTE_MS, protocolVersionId: world.medical.protocolVersion.id,
-    }])
+    expect(world.db.select().from(trialEnds).all()).toMatchObject([
+      {
+        trialId: trial.id,
+        outcome: 'passed',
+        rulesMet: [],
+        observedAt: NOW - 10 * MINUTE_MS,
+        protocolVersionId: world.medical.protocolVersion.id,
+      },
+    ])
     expect(auditRows(world.db, 'trial.end')).toHaveLength(1)
   })
 
@@ -87,7 +142,12 @@ describe('endEpisode', () => {
     sign(world)
     runTrial(world, NOW - 20 * MINUTE_MS)
     const ctx = makeCtx(world.db, world.rt)
-    expectRefusal(() => endEpisode(ctx, given(world, { trialEnd: { outcome: 'passed' } })), 'INVALID', 'trialEnd.reason', /planned length/)
+    expectRefusal(
+      () => endEpisode(ctx, given(world, { trialEnd: { outcome: 'passed' } })),
+      'INVALID',
+      'trialEnd.reason',
+      /planned length/,
+    )
     endEpisode(ctx, given(world, { trialEnd: { outcome: 'passed', reason: 'Awake and strong' } }))
     expect(world.db.select().from(trialEnds).get()?.reason).toBe('Awake and strong')
   })
@@ -122,13 +182,19 @@ describe('endEpisode', () => {
     const world = makeWorld()
     sign(world)
     makeSettings(world.db, world.episode, world.place, { observedAt: NOW - 5 * MINUTE_MS })
-    expectRefusal(() => endEpisode(makeCtx(world.db, world.rt), given(world)), 'INVALID', 'observed.time', /entry stands at 07:55/)
+    expectRefusal(
+      () => endEpisode(makeCtx(world.db, world.rt), given(world)),
+      'INVALID',
+      'observed.time',
+      /entry stands at 07:55/,
+    )
   })
 
   it('refuses an end before the beginning and in the future', () => {
     const world = makeWorld()
     sign(world)
-    const end = (ms: number) => () => endEpisode(makeCtx(world.db, world.rt), given(world, { observed: at(ms), end: 'died', supportAfter: null }))
+    const end = (ms: number) => () =>
+      endEpisode(makeCtx(world.db, world.rt), given(world, { observed: at(ms), end: 'died', supportAfter: null }))
     expectRefusal(end(world.episode.startedAt - HOUR_MS), 'INVALID', 'observed.time', /before ventilation began/)
     expectRefusal(end(NOW + HOUR_MS), 'INVALID', 'observed.time', /future/)
   })
@@ -169,7 +235,14 @@ describe('endEpisode', () => {
     serveDatabase(world.db)
     const { cookie } = makeSession(world.db, world.rt.id)
     const { episodeId, ...body } = given(world, { observed: at(Date.now() - MINUTE_MS), end: 'self_extubated' })
-    expect((await POST(makeRequest('/api/x', { body: { ...body, end: 'extubated', supportAfter: null }, cookie }), routeParams({ episodeId }))).status).toBe(422)
+    expect(
+      (
+        await POST(
+          makeRequest('/api/x', { body: { ...body, end: 'extubated', supportAfter: null }, cookie }),
+          routeParams({ episodeId }),
+        )
+      ).status,
+    ).toBe(422)
     expect((await POST(makeRequest('/api/x', { body, cookie }), routeParams({ episodeId }))).status).toBe(200)
     expect(episodeOf(world)?.end).toBe('self_extubated')
   })

@@ -8,18 +8,34 @@ import { auditRows, makeCtx, makeWorld, NOW } from '../../helpers/factories'
 import { makeRequest, makeSession, routeParams, serveDatabase } from '../../helpers/test-server'
 import { at, expectDoor, expectNothingLeft, expectOnce, expectRefusal } from '../../helpers/verb-checks'
 
-const NUMBERS = { ph: 7.38, paCO2MmHg: 42, paO2MmHg: 78, fio2Fraction: 0.4, bicarbonateMmolPerL: 24, lactateMmolPerL: 1.1, haemoglobinGPerDl: 10.2 }
+const NUMBERS = {
+  ph: 7.38,
+  paCO2MmHg: 42,
+  paO2MmHg: 78,
+  fio2Fraction: 0.4,
+  bicarbonateMmolPerL: 24,
+  lactateMmolPerL: 1.1,
+  haemoglobinGPerDl: 10.2,
+}
 
 const given = (episodeId: string, over: Partial<RecordGasInput> = {}): RecordGasInput => ({
-  episodeId, observed: at(NOW - 5 * MINUTE_MS), amends: null, ...NUMBERS, ...over,
+  episodeId,
+  observed: at(NOW - 5 * MINUTE_MS),
+  amends: null,
+  ...NUMBERS,
+  ...over,
 })
 
 describe('recordGas', () => {
   it('keeps the gas with the FiO2 it was drawn at, and writes the audit row', () => {
     const world = makeWorld()
     const { id } = recordGas(makeCtx(world.db, world.nurse), given(world.episode.id))
-    expect(world.db.select().from(gases).all()).toMatchObject([{ id, ...NUMBERS, observedAt: NOW - 5 * MINUTE_MS, recordedBy: world.nurse.id }])
-    expect(auditRows(world.db, 'gas.record')).toMatchObject([{ subjectId: id, unitId: world.medical.unit.id, actorId: world.nurse.id }])
+    expect(world.db.select().from(gases).all()).toMatchObject([
+      { id, ...NUMBERS, observedAt: NOW - 5 * MINUTE_MS, recordedBy: world.nurse.id },
+    ])
+    expect(auditRows(world.db, 'gas.record')).toMatchObject([
+      { subjectId: id, unitId: world.medical.unit.id, actorId: world.nurse.id },
+    ])
   })
 
   it('refuses a unit lead and a person from another unit', () => {
@@ -45,7 +61,16 @@ describe('recordGas', () => {
     const amend = () => recordGas(ctx, given(world.episode.id, { ph: 7.3, amends: { id: first.id, reason: 'read wrongly' } }))
     amend()
     expectRefusal(amend, 'CONFLICT')
-    expect(world.db.select().from(gases).all().map((row) => [row.entryVersion, row.ph])).toEqual([[1, 7.38], [2, 7.3]])
+    expect(
+      world.db
+        .select()
+        .from(gases)
+        .all()
+        .map((row) => [row.entryVersion, row.ph]),
+    ).toEqual([
+      [1, 7.38],
+      [2, 7.3],
+    ])
     expect(auditRows(world.db, 'gas.amend')).toHaveLength(1)
   })
 
@@ -63,8 +88,13 @@ describe('recordGas', () => {
 
 describe('what the gas form refuses', () => {
   it.each([
-    ['paCO2MmHg', 5.6, /kPa.*42 mmHg\?/], ['paO2MmHg', 10.4, /kPa.*78 mmHg\?/], ['haemoglobinGPerDl', 102, /10\.2 g\/dL\?/], ['fio2Fraction', 40, /0\.40\?/],
-    ['ph', 73.8, /between 6\.6 and 7\.9/], ['ph', null, /pH/], ['fio2Fraction', undefined, /FiO2/],
+    ['paCO2MmHg', 5.6, /kPa.*42 mmHg\?/],
+    ['paO2MmHg', 10.4, /kPa.*78 mmHg\?/],
+    ['haemoglobinGPerDl', 102, /10\.2 g\/dL\?/],
+    ['fio2Fraction', 40, /0\.40\?/],
+    ['ph', 73.8, /between 6\.6 and 7\.9/],
+    ['ph', null, /pH/],
+    ['fio2Fraction', undefined, /FiO2/],
     ['ph', 6.9, /6\.9 is unusual for the pH\. Look again, then confirm\./],
   ])('%s of %s, in words that tell what would be right', (field, value, words) => {
     const parsed = recordGasSchema.safeParse({ ...given('e1'), [field]: value })

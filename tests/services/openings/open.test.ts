@@ -17,14 +17,22 @@ beforeEach(() => {
   world = makeWorld()
   serveDatabase(world.db)
 })
-const given = (over: Partial<{ recordNumber: string; reason: string }> = {}) => ({ recordNumber: world.patient.recordNumber, reason: REASON, ...over })
+const given = (over: Partial<{ recordNumber: string; reason: string }> = {}) => ({
+  recordNumber: world.patient.recordNumber,
+  reason: REASON,
+  ...over,
+})
 
 describe('openRecord', () => {
   it('opens the record for eight hours, writes the audit row and tells the unit’s leads without a name', () => {
     const answer = openRecord(makeCtx(world.db, world.outsider), given())
     expect(answer).toEqual({ patientId: world.patient.id, expiresAt: NOW + 8 * HOUR_MS })
-    expect(world.db.select().from(recordOpenings).all()).toMatchObject([{ personId: world.outsider.id, unitId: world.medical.unit.id, reason: REASON, openedAt: NOW }])
-    expect(auditRows(world.db, 'opening.open')).toMatchObject([{ subjectId: world.patient.id, actorId: world.outsider.id, unitId: world.medical.unit.id }])
+    expect(world.db.select().from(recordOpenings).all()).toMatchObject([
+      { personId: world.outsider.id, unitId: world.medical.unit.id, reason: REASON, openedAt: NOW },
+    ])
+    expect(auditRows(world.db, 'opening.open')).toMatchObject([
+      { subjectId: world.patient.id, actorId: world.outsider.id, unitId: world.medical.unit.id },
+    ])
     const mails = world.db.select().from(mailLedger).all()
     expect(mails).toMatchObject([{ kind: 'record_opened', personId: world.lead.id, unitId: world.medical.unit.id }])
     for (const secret of [world.patient.familyName, world.patient.givenName, world.patient.recordNumber]) {
@@ -36,15 +44,34 @@ describe('openRecord', () => {
     expectRefusal(() => readPatient(makeCtx(world.db, world.outsider), { patientId: world.patient.id }), 'NOT_FOUND')
     openRecord(makeCtx(world.db, world.outsider), given())
     const read = (now: number) => readPatient(makeCtx(world.db, world.outsider, now), { patientId: world.patient.id })
-    expect(read(NOW + 8 * HOUR_MS - 1)).toMatchObject({ isOpening: true, openUntil: NOW + 8 * HOUR_MS, patient: { id: world.patient.id } })
+    expect(read(NOW + 8 * HOUR_MS - 1)).toMatchObject({
+      isOpening: true,
+      openUntil: NOW + 8 * HOUR_MS,
+      patient: { id: world.patient.id },
+    })
     expect(Object.values(read(NOW).may).every((may) => !may)).toBe(true)
     expect(auditRows(world.db, 'patient.read_by_opening')).toHaveLength(2)
-    expect(auditRows(world.db, 'patient.read_by_opening')).toMatchObject([{ actorId: world.outsider.id, subjectId: world.patient.id }, {}])
+    expect(auditRows(world.db, 'patient.read_by_opening')).toMatchObject([
+      { actorId: world.outsider.id, subjectId: world.patient.id },
+      {},
+    ])
     expectRefusal(() => read(NOW + 8 * HOUR_MS), 'NOT_FOUND')
     const settings = {
-      episodeId: world.episode.id, observed: at(NOW), amends: null, mode: 'PC-CSV' as const, fio2Fraction: 0.4, peepCmH2O: 5, setRatePerMin: null,
-      setTidalVolumeMl: null, inspiratoryPressureCmH2O: null, pressureSupportCmH2O: null, measuredRatePerMin: null, measuredTidalVolumeMl: null,
-      peakPressureCmH2O: null, plateauPressureCmH2O: null, spo2Percent: null,
+      episodeId: world.episode.id,
+      observed: at(NOW),
+      amends: null,
+      mode: 'PC-CSV' as const,
+      fio2Fraction: 0.4,
+      peepCmH2O: 5,
+      setRatePerMin: null,
+      setTidalVolumeMl: null,
+      inspiratoryPressureCmH2O: null,
+      pressureSupportCmH2O: null,
+      measuredRatePerMin: null,
+      measuredTidalVolumeMl: null,
+      peakPressureCmH2O: null,
+      plateauPressureCmH2O: null,
+      spo2Percent: null,
     }
     expectRefusal(() => recordSettings(makeCtx(world.db, world.outsider), settings), 'FORBIDDEN')
   })
@@ -63,7 +90,9 @@ describe('openRecord', () => {
 
   it('refuses an administrator without a role, and writes the refusal down', () => {
     expectRefusal(() => openRecord(makeCtx(world.db, world.administrator), given()), 'FORBIDDEN')
-    expect(auditRows(world.db, 'access.denied')).toMatchObject([{ actorId: world.administrator.id, after: { asked: 'opening.open' } }])
+    expect(auditRows(world.db, 'access.denied')).toMatchObject([
+      { actorId: world.administrator.id, after: { asked: 'opening.open' } },
+    ])
     expect(world.db.select().from(recordOpenings).all()).toEqual([])
   })
 
@@ -100,11 +129,19 @@ describe('openRecord', () => {
 
 describe('listOpenings', () => {
   it('shows the unit lead who opened what, when and why, newest first', () => {
-    const second = makePerson(world.db, world.hospital.id, [{ unitId: world.surgical.unit.id, role: 'physician' }], { name: 'Second Reader' })
+    const second = makePerson(world.db, world.hospital.id, [{ unitId: world.surgical.unit.id, role: 'physician' }], {
+      name: 'Second Reader',
+    })
     openRecord(makeCtx(world.db, world.outsider, NOW - 9 * HOUR_MS), given())
     openRecord(makeCtx(world.db, second), given({ reason: 'Planned transfer tomorrow' }))
     expect(listOpenings(makeCtx(world.db, world.lead), { unitId: world.medical.unit.id }).openings).toMatchObject([
-      { personName: 'Second Reader', reason: 'Planned transfer tomorrow', isOpen: true, patientId: world.patient.id, familyName: world.patient.familyName },
+      {
+        personName: 'Second Reader',
+        reason: 'Planned transfer tomorrow',
+        isOpen: true,
+        patientId: world.patient.id,
+        familyName: world.patient.familyName,
+      },
       { personName: 'Otis Outsider', reason: REASON, isOpen: false },
     ])
   })

@@ -13,15 +13,37 @@ type World = ReturnType<typeof makeWorld>
 const bedId = (world: World, index: number) => world.medical.beds[index]?.id ?? ''
 
 const given = (world: World, over: Partial<AdmitPatientInput> = {}): AdmitPatientInput => ({
-  unitId: world.medical.unit.id, bedId: bedId(world, 1), observed: at(NOW - HOUR_MS), recordNumber: 'KR 100', familyName: 'Okafor', givenName: 'Sam',
-  birthDate: '1970-02-01', sex: 'female', heightCm: 165, weightKg: 70, ...over,
+  unitId: world.medical.unit.id,
+  bedId: bedId(world, 1),
+  observed: at(NOW - HOUR_MS),
+  recordNumber: 'KR 100',
+  familyName: 'Okafor',
+  givenName: 'Sam',
+  birthDate: '1970-02-01',
+  sex: 'female',
+  heightCm: 165,
+  weightKg: 70,
+  ...over,
 })
 /** A patient who was here and has left. */
 function addFormer(world: World, over: Partial<typeof patients.$inferInsert> = {}) {
   const former = makePatient(world.db, world.hospital.id, world.rt.id, {
-    recordNumber: 'KR 100', familyName: 'Okafor', givenName: 'Sam', birthDate: '1970-02-01', sex: 'female', heightCm: 165, weightKg: 82, ...over,
+    recordNumber: 'KR 100',
+    familyName: 'Okafor',
+    givenName: 'Sam',
+    birthDate: '1970-02-01',
+    sex: 'female',
+    heightCm: 165,
+    weightKg: 82,
+    ...over,
   })
-  makeStay(world.db, { patientId: former.id, unitId: world.surgical.unit.id, bedId: world.surgical.beds[0]?.id ?? '', endedAt: NOW - 5 * HOUR_MS, end: 'left_unit' })
+  makeStay(world.db, {
+    patientId: former.id,
+    unitId: world.surgical.unit.id,
+    bedId: world.surgical.beds[0]?.id ?? '',
+    endedAt: NOW - 5 * HOUR_MS,
+    end: 'left_unit',
+  })
   return former
 }
 
@@ -31,19 +53,39 @@ describe('admitPatient', () => {
     const answer = admitPatient(makeCtx(world.db, world.nurse), given(world))
     expect(answer.isReadmission).toBe(false)
     expect(world.db.select().from(patients).where(eq(patients.id, answer.patientId)).get()).toMatchObject({
-      hospitalId: world.hospital.id, recordNumber: 'KR 100', familyName: 'Okafor', givenName: 'Sam', birthDate: '1970-02-01', sex: 'female', heightCm: 165,
-      weightKg: 70, createdBy: world.nurse.id, createdAt: NOW,
+      hospitalId: world.hospital.id,
+      recordNumber: 'KR 100',
+      familyName: 'Okafor',
+      givenName: 'Sam',
+      birthDate: '1970-02-01',
+      sex: 'female',
+      heightCm: 165,
+      weightKg: 70,
+      createdBy: world.nurse.id,
+      createdAt: NOW,
     })
     expect(world.db.select().from(stays).where(eq(stays.id, answer.stayId)).get()).toMatchObject({
-      patientId: answer.patientId, unitId: world.medical.unit.id, bedId: bedId(world, 1), startedAt: NOW - HOUR_MS, endedAt: null,
+      patientId: answer.patientId,
+      unitId: world.medical.unit.id,
+      bedId: bedId(world, 1),
+      startedAt: NOW - HOUR_MS,
+      endedAt: null,
     })
     expect(auditRows(world.db, 'patient.admit')).toMatchObject([{ subjectId: answer.patientId, actorId: world.nurse.id }])
   })
 
   it('takes what is not known as not known', () => {
     const world = makeWorld()
-    const { patientId } = admitPatient(makeCtx(world.db, world.rt), given(world, { birthDate: null, sex: null, heightCm: null, weightKg: null }))
-    expect(world.db.select().from(patients).where(eq(patients.id, patientId)).get()).toMatchObject({ birthDate: null, sex: null, heightCm: null, weightKg: null })
+    const { patientId } = admitPatient(
+      makeCtx(world.db, world.rt),
+      given(world, { birthDate: null, sex: null, heightCm: null, weightKg: null }),
+    )
+    expect(world.db.select().from(patients).where(eq(patients.id, patientId)).get()).toMatchObject({
+      birthDate: null,
+      sex: null,
+      heightCm: null,
+      weightKg: null,
+    })
   })
 
   it('refuses a bed that is taken without naming the patient in it', () => {
@@ -57,7 +99,11 @@ describe('admitPatient', () => {
   it('refuses a retired bed and a bed of another unit', () => {
     const world = makeWorld()
     const ctx = makeCtx(world.db, world.rt)
-    world.db.update(beds).set({ retiredAt: NOW }).where(eq(beds.id, bedId(world, 1))).run()
+    world.db
+      .update(beds)
+      .set({ retiredAt: NOW })
+      .where(eq(beds.id, bedId(world, 1)))
+      .run()
     expectRefusal(() => admitPatient(ctx, given(world)), 'INVALID', 'bedId')
     expectRefusal(() => admitPatient(ctx, given(world, { bedId: world.surgical.beds[0]?.id ?? '' })), 'INVALID', 'bedId')
   })
@@ -106,16 +152,24 @@ describe('readmission by record number', () => {
   it('finds the patient again, keeps one record, and brings weight and height up to date', () => {
     const world = makeWorld()
     const former = addFormer(world)
-    const answer = admitPatient(makeCtx(world.db, world.rt), given(world, { familyName: 'OKAFOR ', heightCm: null, birthDate: null }))
+    const answer = admitPatient(
+      makeCtx(world.db, world.rt),
+      given(world, { familyName: 'OKAFOR ', heightCm: null, birthDate: null }),
+    )
     expect(answer).toMatchObject({ patientId: former.id, isReadmission: true })
     expect(world.db.select().from(patients).where(eq(patients.id, former.id)).get()).toMatchObject({
-      familyName: 'Okafor', weightKg: 70, heightCm: 165, birthDate: '1970-02-01', version: 2,
+      familyName: 'Okafor',
+      weightKg: 70,
+      heightCm: 165,
+      birthDate: '1970-02-01',
+      version: 2,
     })
     expect(auditRows(world.db, 'patient.readmit')).toMatchObject([{ before: { weightKg: 82 } }])
   })
 
   it.each([
-    ['another name', { givenName: 'Alex' }, 'recordNumber'], ['another date of birth', { birthDate: '1970-01-02' }, 'birthDate'],
+    ['another name', { givenName: 'Alex' }, 'recordNumber'],
+    ['another date of birth', { birthDate: '1970-01-02' }, 'birthDate'],
     ['the other sex', { sex: 'male' as const }, 'sex'],
   ])('refuses %s at the field and shows nothing of the record', (_what, over, field) => {
     const world = makeWorld()
@@ -130,7 +184,12 @@ describe('readmission by record number', () => {
     const world = makeWorld()
     const { recordNumber, familyName, givenName, birthDate, sex } = world.patient
     const same = { recordNumber, familyName, givenName, birthDate, sex }
-    expectRefusal(() => admitPatient(makeCtx(world.db, world.rt), given(world, same)), 'CONFLICT', 'recordNumber', /bed of this unit/)
+    expectRefusal(
+      () => admitPatient(makeCtx(world.db, world.rt), given(world, same)),
+      'CONFLICT',
+      'recordNumber',
+      /bed of this unit/,
+    )
     const other = { ...given(world, same), unitId: world.surgical.unit.id, bedId: world.surgical.beds[0]?.id ?? '' }
     expectRefusal(() => admitPatient(makeCtx(world.db, world.outsider), other), 'CONFLICT', 'recordNumber', /another unit/)
   })
@@ -138,7 +197,12 @@ describe('readmission by record number', () => {
   it('refuses a time before the last stay ended', () => {
     const world = makeWorld()
     addFormer(world)
-    expectRefusal(() => admitPatient(makeCtx(world.db, world.rt), given(world, { observed: at(NOW - 6 * HOUR_MS) })), 'INVALID', 'observed.time', /left the last bed at 03:00/)
+    expectRefusal(
+      () => admitPatient(makeCtx(world.db, world.rt), given(world, { observed: at(NOW - 6 * HOUR_MS) })),
+      'INVALID',
+      'observed.time',
+      /left the last bed at 03:00/,
+    )
   })
 
   it('takes the same record number in another hospital as another patient', () => {
@@ -154,9 +218,16 @@ describe('readmission by record number', () => {
 describe('what the admission form refuses', () => {
   const world = makeWorld()
   it.each([
-    ['recordNumber', '  ', /Give the record number/], ['familyName', '', /family name/], ['birthDate', '1.2.1970', /year-month-day/],
-    ['birthDate', '1970-02-30', /does not exist/], ['heightCm', 1.65, /165 cm\?/], ['heightCm', 66, /inches.*168 cm\?/], ['weightKg', 8, /between 20 and 400/],
-    ['weightKg', 230, /Look again, then confirm/], ['sex', 'other', /sex/], ['bedId', '', /bed/],
+    ['recordNumber', '  ', /Give the record number/],
+    ['familyName', '', /family name/],
+    ['birthDate', '1.2.1970', /year-month-day/],
+    ['birthDate', '1970-02-30', /does not exist/],
+    ['heightCm', 1.65, /165 cm\?/],
+    ['heightCm', 66, /inches.*168 cm\?/],
+    ['weightKg', 8, /between 20 and 400/],
+    ['weightKg', 230, /Look again, then confirm/],
+    ['sex', 'other', /sex/],
+    ['bedId', '', /bed/],
   ])('%s of %s', (field, value, words) => {
     const parsed = admitPatientSchema.safeParse({ ...given(world), [field]: value })
     expect(parsed.error?.issues.map((issue) => issue.path.join('.'))).toContain(field)

@@ -9,16 +9,31 @@ import { makeRequest, makeSession, routeParams, serveDatabase } from '../../help
 import { expectDoor, expectNothingLeft, expectOnce, expectRefusal } from '../../helpers/verb-checks'
 
 const given = (world: ReturnType<typeof makeWorld>, over: Partial<CorrectPatientInput> = {}): CorrectPatientInput => ({
-  patientId: world.patient.id, version: 1, recordNumber: world.patient.recordNumber, familyName: 'Varga', givenName: 'Ines', birthDate: '1980-07-01', sex: 'female',
-  heightCm: 170, weightKg: 64, ...over,
+  patientId: world.patient.id,
+  version: 1,
+  recordNumber: world.patient.recordNumber,
+  familyName: 'Varga',
+  givenName: 'Ines',
+  birthDate: '1980-07-01',
+  sex: 'female',
+  heightCm: 170,
+  weightKg: 64,
+  ...over,
 })
 
 describe('correctPatient', () => {
   it('changes the details and keeps what stood before in the audit log', () => {
     const world = makeWorld()
     expect(correctPatient(makeCtx(world.db, world.nurse), given(world))).toEqual({ version: 2 })
-    expect(world.db.select().from(patients).where(eq(patients.id, world.patient.id)).get()).toMatchObject({ familyName: 'Varga', heightCm: 170, sex: 'female', version: 2 })
-    expect(auditRows(world.db, 'patient.correct')).toMatchObject([{ before: { heightCm: 180, sex: 'male' }, after: { heightCm: 170, sex: 'female' } }])
+    expect(world.db.select().from(patients).where(eq(patients.id, world.patient.id)).get()).toMatchObject({
+      familyName: 'Varga',
+      heightCm: 170,
+      sex: 'female',
+      version: 2,
+    })
+    expect(auditRows(world.db, 'patient.correct')).toMatchObject([
+      { before: { heightCm: 180, sex: 'male' }, after: { heightCm: 170, sex: 'female' } },
+    ])
   })
 
   it('refuses a form that was opened before a colleague changed the details', () => {
@@ -31,12 +46,20 @@ describe('correctPatient', () => {
   it('refuses the record number of another patient', () => {
     const world = makeWorld()
     const other = makePatient(world.db, world.hospital.id, world.rt.id)
-    expectRefusal(() => correctPatient(makeCtx(world.db, world.rt), given(world, { recordNumber: other.recordNumber })), 'INVALID', 'recordNumber')
+    expectRefusal(
+      () => correctPatient(makeCtx(world.db, world.rt), given(world, { recordNumber: other.recordNumber })),
+      'INVALID',
+      'recordNumber',
+    )
   })
 
   it('refuses a date of birth in the future', () => {
     const world = makeWorld()
-    expectRefusal(() => correctPatient(makeCtx(world.db, world.rt), given(world, { birthDate: '2027-01-01' })), 'INVALID', 'birthDate')
+    expectRefusal(
+      () => correctPatient(makeCtx(world.db, world.rt), given(world, { birthDate: '2027-01-01' })),
+      'INVALID',
+      'birthDate',
+    )
   })
 
   it('refuses a unit lead and a person from another unit', () => {

@@ -12,7 +12,13 @@ describe('listPatients', () => {
     makeStay(world.db, { patientId: other.id, unitId: world.medical.unit.id, bedId: world.medical.beds[2]?.id ?? '' })
     const list = listPatients(makeCtx(world.db, world.rt), { unitId: world.medical.unit.id })
     expect(list.patients).toMatchObject([
-      { patientId: world.patient.id, bedLabel: 'M01', ageYears: 64, episode: { id: world.episode.id, ventilatorDayNumber: 3 }, lastEndedAt: null },
+      {
+        patientId: world.patient.id,
+        bedLabel: 'M01',
+        ageYears: 64,
+        episode: { id: world.episode.id, ventilatorDayNumber: 3 },
+        lastEndedAt: null,
+      },
       { patientId: other.id, bedLabel: 'M03', ageYears: null, episode: null },
     ])
     expect(list.freeBeds.map((bed) => bed.label)).toEqual(['M02', 'M04'])
@@ -21,7 +27,10 @@ describe('listPatients', () => {
 
   it('leaves out who has left, and tells when ventilation ended', () => {
     const world = makeWorld()
-    world.db.update(episodes).set({ endedAt: NOW - HOUR_MS, end: 'extubated' }).run()
+    world.db
+      .update(episodes)
+      .set({ endedAt: NOW - HOUR_MS, end: 'extubated' })
+      .run()
     const read = () => listPatients(makeCtx(world.db, world.lead), { unitId: world.medical.unit.id })
     expect(read().patients).toMatchObject([{ episode: null, lastEndedAt: NOW - HOUR_MS }])
     expect(read().mayAdmit).toBe(false)

@@ -11,11 +11,18 @@ import { at, expectDoor, expectNothingLeft, expectOnce, expectRefusal } from '..
 /** The world's patient, extubated three hours ago. */
 function makeExtubated() {
   const world = makeWorld()
-  world.db.update(episodes).set({ endedAt: NOW - 3 * HOUR_MS, end: 'extubated' }).run()
+  world.db
+    .update(episodes)
+    .set({ endedAt: NOW - 3 * HOUR_MS, end: 'extubated' })
+    .run()
   return world
 }
 const given = (world: ReturnType<typeof makeWorld>, over: Partial<EndStayInput> = {}): EndStayInput => ({
-  patientId: world.patient.id, stayId: world.stay.id, end: 'left_unit', observed: at(NOW - HOUR_MS), ...over,
+  patientId: world.patient.id,
+  stayId: world.stay.id,
+  end: 'left_unit',
+  observed: at(NOW - HOUR_MS),
+  ...over,
 })
 
 describe('endStay', () => {
@@ -28,7 +35,12 @@ describe('endStay', () => {
 
   it('refuses while ventilation runs', () => {
     const world = makeWorld()
-    expectRefusal(() => endStay(makeCtx(world.db, world.nurse), given(world, { end: 'died' })), 'PRECONDITION', undefined, /Ventilation still runs/)
+    expectRefusal(
+      () => endStay(makeCtx(world.db, world.nurse), given(world, { end: 'died' })),
+      'PRECONDITION',
+      undefined,
+      /Ventilation still runs/,
+    )
     expect(world.db.select().from(stays).get()?.endedAt).toBeNull()
   })
 
@@ -67,7 +79,9 @@ describe('endStay', () => {
     serveDatabase(world.db)
     const { cookie } = makeSession(world.db, world.rt.id)
     const { patientId, ...body } = given(world, { observed: at(Date.now() - MINUTE_MS) })
-    expect((await POST(makeRequest('/api/x', { body: { ...body, end: 'moved' }, cookie }), routeParams({ patientId }))).status).toBe(422)
+    expect(
+      (await POST(makeRequest('/api/x', { body: { ...body, end: 'moved' }, cookie }), routeParams({ patientId }))).status,
+    ).toBe(422)
     expect((await POST(makeRequest('/api/x', { body, cookie }), routeParams({ patientId }))).status).toBe(200)
   })
 })

@@ -18,9 +18,15 @@ const bedOf = (place: { beds: { id: string; label: string }[] }, index: number) 
   return bed
 }
 const given = (world: World, over: Partial<MoveStayInput> = {}): MoveStayInput => ({
-  patientId: world.patient.id, stayId: world.stay.id, unitId: world.medical.unit.id, bedId: bedOf(world.medical, 1).id, observed: at(NOW - HOUR_MS), ...over,
+  patientId: world.patient.id,
+  stayId: world.stay.id,
+  unitId: world.medical.unit.id,
+  bedId: bedOf(world.medical, 1).id,
+  observed: at(NOW - HOUR_MS),
+  ...over,
 })
-const staysOf = (world: World) => world.db.select().from(stays).where(eq(stays.patientId, world.patient.id)).orderBy(stays.startedAt).all()
+const staysOf = (world: World) =>
+  world.db.select().from(stays).where(eq(stays.patientId, world.patient.id)).orderBy(stays.startedAt).all()
 
 describe('moveStay', () => {
   it('ends one stay and begins the next at the same moment, with the audit row', () => {
@@ -36,7 +42,9 @@ describe('moveStay', () => {
   it('moves to another unit: from then on the patient is the other unit’s', () => {
     const world = makeWorld()
     moveStay(makeCtx(world.db, world.rt), given(world, { unitId: world.surgical.unit.id, bedId: bedOf(world.surgical, 0).id }))
-    expect(listToday(makeCtx(world.db, world.outsider), { unitId: world.surgical.unit.id }).rows.map((row) => row.patientId)).toEqual([world.patient.id])
+    expect(
+      listToday(makeCtx(world.db, world.outsider), { unitId: world.surgical.unit.id }).rows.map((row) => row.patientId),
+    ).toEqual([world.patient.id])
     expect(listToday(makeCtx(world.db, world.rt), { unitId: world.medical.unit.id }).rows).toEqual([])
   })
 
@@ -53,7 +61,11 @@ describe('moveStay', () => {
     const world = makeWorld()
     const other = makePatient(world.db, world.hospital.id, world.rt.id)
     makeStay(world.db, {
-      patientId: other.id, unitId: world.medical.unit.id, bedId: bedOf(world.medical, 1).id, endedAt: NOW - 30 * MINUTE_MS, end: 'left_unit',
+      patientId: other.id,
+      unitId: world.medical.unit.id,
+      bedId: bedOf(world.medical, 1).id,
+      endedAt: NOW - 30 * MINUTE_MS,
+      end: 'left_unit',
     })
     const ctx = makeCtx(world.db, world.rt)
     expectRefusal(() => moveStay(ctx, given(world)), 'INVALID', 'bedId', /taken until 07:30/)
@@ -65,12 +77,29 @@ describe('moveStay', () => {
     const ctx = makeCtx(world.db, world.rt)
     const elsewhere = makeUnit(world.db, makeHospital(world.db).id)
     expectRefusal(() => moveStay(ctx, given(world, { bedId: world.bed.id })), 'INVALID', 'bedId', /in this bed already/)
-    expectRefusal(() => moveStay(ctx, given(world, { bedId: bedOf(world.surgical, 0).id })), 'INVALID', 'bedId', /not in use in this unit/)
-    expectRefusal(() => moveStay(ctx, given(world, { unitId: elsewhere.unit.id, bedId: bedOf(elsewhere, 0).id })), 'INVALID', 'unitId')
-    world.db.update(beds).set({ retiredAt: NOW }).where(eq(beds.id, bedOf(world.medical, 1).id)).run()
+    expectRefusal(
+      () => moveStay(ctx, given(world, { bedId: bedOf(world.surgical, 0).id })),
+      'INVALID',
+      'bedId',
+      /not in use in this unit/,
+    )
+    expectRefusal(
+      () => moveStay(ctx, given(world, { unitId: elsewhere.unit.id, bedId: bedOf(elsewhere, 0).id })),
+      'INVALID',
+      'unitId',
+    )
+    world.db
+      .update(beds)
+      .set({ retiredAt: NOW })
+      .where(eq(beds.id, bedOf(world.medical, 1).id))
+      .run()
     expectRefusal(() => moveStay(ctx, given(world)), 'INVALID', 'bedId', /not in use/)
     world.db.update(units).set({ retiredAt: NOW }).where(eq(units.id, world.surgical.unit.id)).run()
-    expectRefusal(() => moveStay(ctx, given(world, { unitId: world.surgical.unit.id, bedId: bedOf(world.surgical, 0).id })), 'INVALID', 'unitId')
+    expectRefusal(
+      () => moveStay(ctx, given(world, { unitId: world.surgical.unit.id, bedId: bedOf(world.surgical, 0).id })),
+      'INVALID',
+      'unitId',
+    )
   })
 
   it('refuses the future and a time before the present stay', () => {
@@ -119,7 +148,8 @@ describe('readMoveForm', () => {
     const world = makeWorld()
     const form = readMoveForm(makeCtx(world.db, world.rt), { patientId: world.patient.id })
     expect(form.units.map((unit) => [unit.name, unit.freeBeds.map((bed) => bed.label)])).toEqual([
-      ['Medical ICU', ['M02', 'M03', 'M04']], ['Surgical ICU', ['S01', 'S02', 'S03', 'S04']],
+      ['Medical ICU', ['M02', 'M03', 'M04']],
+      ['Surgical ICU', ['S01', 'S02', 'S03', 'S04']],
     ])
     expect(form.stay).toMatchObject({ id: world.stay.id, unitId: world.medical.unit.id, bedLabel: 'M01' })
   })

@@ -8,14 +8,21 @@ const WINDOW = { opensMin: 300, closesMin: 540 }
 describe('makeDayClock', () => {
   it('places a moment in the unit’s day and screening window', () => {
     expect(makeDayClock(Date.UTC(2026, 2, 3, 15), TIME_ZONE, WINDOW)).toEqual({
-      nowMs: Date.UTC(2026, 2, 3, 15), day: '2026-03-03', previousDay: '2026-03-02', windowOpensMs: Date.UTC(2026, 2, 3, 12),
-      windowClosesMs: Date.UTC(2026, 2, 3, 16), dayEndsMs: Date.UTC(2026, 2, 4, 7),
+      nowMs: Date.UTC(2026, 2, 3, 15),
+      day: '2026-03-03',
+      previousDay: '2026-03-02',
+      windowOpensMs: Date.UTC(2026, 2, 3, 12),
+      windowClosesMs: Date.UTC(2026, 2, 3, 16),
+      dayEndsMs: Date.UTC(2026, 2, 4, 7),
     })
   })
 
   it('changes the day at the unit’s midnight, not at the server’s', () => {
     expect(makeDayClock(Date.UTC(2026, 2, 4, 6, 59), TIME_ZONE, WINDOW).day).toBe('2026-03-03')
-    expect(makeDayClock(Date.UTC(2026, 2, 4, 7), TIME_ZONE, WINDOW)).toMatchObject({ day: '2026-03-04', previousDay: '2026-03-03' })
+    expect(makeDayClock(Date.UTC(2026, 2, 4, 7), TIME_ZONE, WINDOW)).toMatchObject({
+      day: '2026-03-04',
+      previousDay: '2026-03-03',
+    })
   })
 
   it('keeps the window on the wall clock through both clock changes', () => {
