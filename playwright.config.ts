@@ -37,6 +37,7 @@ export default defineConfig({
   ],
   use: {
     locale: 'en-GB',
+    actionTimeout: 20_000,
     trace: 'retain-on-failure',
     launchOptions: {
       executablePath: chromium,

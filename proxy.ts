@@ -36,7 +36,10 @@ export function proxy(request: NextRequest): NextResponse {
   if (!isOpen && !SESSION_COOKIE_NAMES.some((name) => request.cookies.has(name))) {
     // Next wants a whole address here and sends it on as a relative one, so the address that people typed stays as it is.
     const next = pathname === '/' ? '' : `?next=${encodeURIComponent(pathname + search)}`
-    return NextResponse.redirect(new URL(`/sign-in${next}`, request.url), { status: 307, headers: { 'cache-control': 'no-store' } })
+    return NextResponse.redirect(new URL(`/sign-in${next}`, request.url), {
+      status: 307,
+      headers: { 'cache-control': 'no-store' },
+    })
   }
   const nonce = Buffer.from(crypto.getRandomValues(new Uint8Array(16))).toString('base64')
   const policy = contentPolicy(nonce)

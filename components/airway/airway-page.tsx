@@ -28,11 +28,23 @@ export function AirwayPage({ dto }: { dto: AirwayFormDto }) {
     },
   })
   return (
-    <BedsideForm dto={dto} form={form} title="Airway event" path={`/api/episodes/${patient.episodeId}/airway`} mayRecord={dto.may.record} nowMs={nowMs}>
+    <BedsideForm
+      dto={dto}
+      form={form}
+      title="Airway event"
+      path={`/api/episodes/${patient.episodeId}/airway`}
+      mayRecord={dto.may.record}
+      nowMs={nowMs}
+    >
       {patient.airway === 'tracheostomy' && !amending ? (
         <Notice tone="info">A tracheostomy stands on record for this patient already.</Notice>
       ) : null}
-      <ChoiceField control={form.control} name="event" label="What happened" options={[{ value: 'tracheostomy_placed', label: sentenceCase(AIRWAY_EVENT_WORDS.tracheostomy_placed) }]} />
+      <ChoiceField
+        control={form.control}
+        name="event"
+        label="What happened"
+        options={[{ value: 'tracheostomy_placed', label: sentenceCase(AIRWAY_EVENT_WORDS.tracheostomy_placed) }]}
+      />
       <TextareaField control={form.control} name="reason" label="Remark (may stay empty)" />
       <p className="text-muted">Extubation, planned or not, is recorded under “End ventilation”.</p>
     </BedsideForm>

@@ -46,7 +46,8 @@ export function DecisionForm({ dto, isEvidenceChanged, onReadAgain, onSigned, no
   const form = useDecisionForm(dto)
   const { patientId, episodeId, timeZone, unitName } = dto.patient
   const [choice, reasons, lookAgain, supportAfter, steroidsPlanned, note] = useWatch({
-    control: form.control, name: ['choice', 'reasons', 'lookAgain', 'supportAfter', 'steroidsPlanned', 'note'],
+    control: form.control,
+    name: ['choice', 'reasons', 'lookAgain', 'supportAfter', 'steroidsPlanned', 'note'],
   })
   const isNotToday = choice === 'not_today'
   const hasSupport = choice === 'extubate' || choice === 'comfort_extubation'
@@ -68,18 +69,42 @@ export function DecisionForm({ dto, isEvidenceChanged, onReadAgain, onSigned, no
       <h2 className="mb-4 text-lg font-bold">Decision</h2>
       <AmendPanel form={form} entry={dto.amending} timeZone={timeZone} nowMs={nowMs} />
       <Form submit={submit} label="Decision" className="flex flex-col gap-7">
-        <ChoiceField control={form.control} name="choice" label="What do you decide?" options={DECISION_CHOICES.map((value) => ({ value, label: sentenceCase(DECISION_WORDS[value]) }))} />
-        {choice === 'extubate' && dto.isTrialRunning ? <Notice tone="stop" title="A breathing trial is running">Its end is recorded before a decision to extubate.</Notice> : null}
+        <ChoiceField
+          control={form.control}
+          name="choice"
+          label="What do you decide?"
+          options={DECISION_CHOICES.map((value) => ({ value, label: sentenceCase(DECISION_WORDS[value]) }))}
+        />
+        {choice === 'extubate' && dto.isTrialRunning ? (
+          <Notice tone="stop" title="A breathing trial is running">
+            Its end is recorded before a decision to extubate.
+          </Notice>
+        ) : null}
         {isNotToday ? (
           <>
-            <CheckListField control={form.control} name="reasons" label="Reasons" options={NOT_TODAY_REASONS.map((value) => ({ value, label: sentenceCase(NOT_TODAY_WORDS[value]) }))} />
+            <CheckListField
+              control={form.control}
+              name="reasons"
+              label="Reasons"
+              options={NOT_TODAY_REASONS.map((value) => ({ value, label: sentenceCase(NOT_TODAY_WORDS[value]) }))}
+            />
             <LookAgainField control={form.control} today={dto.wallClock.day} />
           </>
         ) : null}
         {hasSupport ? (
           <>
-            <ChoiceField control={form.control} name="supportAfter" label="Support planned after extubation" options={SUPPORTS_AFTER.map((value) => ({ value, label: sentenceCase(SUPPORT_WORDS[value]) }))} />
-            <YesNoField control={form.control} name="steroidsPlanned" label="Steroids before extubation planned" clearLabel="not stated" />
+            <ChoiceField
+              control={form.control}
+              name="supportAfter"
+              label="Support planned after extubation"
+              options={SUPPORTS_AFTER.map((value) => ({ value, label: sentenceCase(SUPPORT_WORDS[value]) }))}
+            />
+            <YesNoField
+              control={form.control}
+              name="steroidsPlanned"
+              label="Steroids before extubation planned"
+              clearLabel="not stated"
+            />
           </>
         ) : null}
         <TextareaField control={form.control} name="note" label="Note" rows={3} maxLength={2000} />
@@ -102,21 +127,31 @@ export function DecisionForm({ dto, isEvidenceChanged, onReadAgain, onSigned, no
         {isEvidenceChanged ? (
           <Notice tone="stop" role="alert" title="The record changed while this page was open">
             <p>What you would sign is no longer what stands in the record. What you typed stays.</p>
-            <Button className="mt-2" onClick={onReadAgain}>Show the record as it stands now</Button>
+            <Button className="mt-2" onClick={onReadAgain}>
+              Show the record as it stands now
+            </Button>
           </Notice>
         ) : null}
         <PasswordField control={form.control} name="password" label="Your password, to sign" autoComplete="current-password" />
         <FormErrorSummary control={form.control} submit={submit} />
-        <div><SubmitButton isSending={submit.isSending} sendingLabel="Signing…">Sign the decision</SubmitButton></div>
+        <div>
+          <SubmitButton isSending={submit.isSending} sendingLabel="Signing…">
+            Sign the decision
+          </SubmitButton>
+        </div>
       </Form>
       <ConflictDialog
         failure={isEvidenceChanged ? null : submit.failure}
         patientId={patientId}
         what="decision"
-        onRecordAnyway={dto.amending ? undefined : () => {
-          form.setValue('recordAnyway', true)
-          frame.current?.querySelector('form')?.requestSubmit()
-        }}
+        onRecordAnyway={
+          dto.amending
+            ? undefined
+            : () => {
+                form.setValue('recordAnyway', true)
+                frame.current?.querySelector('form')?.requestSubmit()
+              }
+        }
       />
     </div>
   )

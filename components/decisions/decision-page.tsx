@@ -37,11 +37,27 @@ export function DecisionPage({ initial, amend }: { initial: DecisionFormDto; ame
       <AdultsOnly isAdult={data.patient.isAdult} patientId={patientId} mayCorrect />
       {data.decisions.length > 0 && amend === null ? (
         <section className="mb-8" aria-labelledby="signed-today">
-          <h2 id="signed-today" className="mb-2 text-lg font-bold">Signed today</h2>
+          <h2 id="signed-today" className="mb-2 text-lg font-bold">
+            Signed today
+          </h2>
           {data.decisions.map((decision) => (
-            <SignedDecision key={decision.id} decision={decision} timeZone={timeZone} nowMs={nowMs} amendHref={maySign ? `/episodes/${episodeId}/decision?amend=${encodeURIComponent(decision.id)}` : null} />
+            <SignedDecision
+              key={decision.id}
+              decision={decision}
+              timeZone={timeZone}
+              nowMs={nowMs}
+              amendHref={maySign ? `/episodes/${episodeId}/decision?amend=${encodeURIComponent(decision.id)}` : null}
+            />
           ))}
-          {showsForm ? null : <NextMoveLine label="What comes next" move={data.move} href={`/patients/${patientId}`} timeZone={timeZone} nowMs={nowMs} />}
+          {showsForm ? null : (
+            <NextMoveLine
+              label="What comes next"
+              move={data.move}
+              href={`/patients/${patientId}`}
+              timeZone={timeZone}
+              nowMs={nowMs}
+            />
+          )}
         </section>
       ) : null}
       <Evidence dto={dto} nowMs={nowMs} />
@@ -60,7 +76,17 @@ export function DecisionPage({ initial, amend }: { initial: DecisionFormDto; ame
           }}
         />
       ) : null}
-      {maySign && !showsForm ? <Button className="mt-6" onClick={() => { setShown(data); setDeciding(true) }}>Sign another decision</Button> : null}
+      {maySign && !showsForm ? (
+        <Button
+          className="mt-6"
+          onClick={() => {
+            setShown(data)
+            setDeciding(true)
+          }}
+        >
+          Sign another decision
+        </Button>
+      ) : null}
       {!maySign ? (
         <Notice tone={isOver ? 'info' : 'wait'} title={isOver ? 'Ventilation has ended' : 'To read only'} className="mt-6">
           {isOver ? 'There is nothing left to decide.' : 'A physician of this unit signs the decision.'}

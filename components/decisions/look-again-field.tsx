@@ -6,7 +6,8 @@ import { tidyTime } from '@/components/forms/tidy-time'
 import { dayShifted, shortDay } from '@/lib/client/wall-clock'
 import type { DecisionInput } from './use-decision-form'
 
-const LOOK = 'min-h-[44px] max-w-full rounded-control border border-muted/80 bg-field px-3.5 text-ink aria-invalid:border-2 aria-invalid:border-stop'
+const LOOK =
+  'min-h-[44px] max-w-full rounded-control border border-muted/80 bg-field px-3.5 text-ink aria-invalid:border-2 aria-invalid:border-stop'
 const DAYS_AHEAD = 7
 
 /** When to look again: a day of the coming week and a time of the unit's clock. */
@@ -26,9 +27,18 @@ export function LookAgainField({ control, today }: { control: Control<DecisionIn
           return (
             <>
               <div className="flex flex-wrap gap-2">
-                <select aria-label="Day to look again" name="lookAgain.day" className={LOOK} value={value.day} aria-invalid={errors?.day ? true : undefined} onChange={(event) => field.onChange({ day: event.target.value, time: value.time })}>
+                <select
+                  aria-label="Day to look again"
+                  name="lookAgain.day"
+                  className={LOOK}
+                  value={value.day}
+                  aria-invalid={errors?.day ? true : undefined}
+                  onChange={(event) => field.onChange({ day: event.target.value, time: value.time })}
+                >
                   {Array.from({ length: DAYS_AHEAD + 1 }, (_, ahead) => dayShifted(today, ahead)).map((day, ahead) => (
-                    <option key={day} value={day}>{ahead === 0 ? `today, ${shortDay(day)}` : ahead === 1 ? `tomorrow, ${shortDay(day)}` : shortDay(day)}</option>
+                    <option key={day} value={day}>
+                      {ahead === 0 ? `today, ${shortDay(day)}` : ahead === 1 ? `tomorrow, ${shortDay(day)}` : shortDay(day)}
+                    </option>
                   ))}
                 </select>
                 <input
@@ -51,7 +61,19 @@ export function LookAgainField({ control, today }: { control: Control<DecisionIn
                 />
               </div>
               {asksFold ? (
-                <select aria-label="Which of the two" name="lookAgain.fold" className={LOOK} value={value.fold ?? ''} onChange={(event) => field.onChange({ day: value.day, time: value.time, ...(event.target.value === '' ? {} : { fold: event.target.value }) })}>
+                <select
+                  aria-label="Which of the two"
+                  name="lookAgain.fold"
+                  className={LOOK}
+                  value={value.fold ?? ''}
+                  onChange={(event) =>
+                    field.onChange({
+                      day: value.day,
+                      time: value.time,
+                      ...(event.target.value === '' ? {} : { fold: event.target.value }),
+                    })
+                  }
+                >
                   <option value="">Choose which {value.time}</option>
                   <option value="first">the first, before the clocks go back</option>
                   <option value="second">the second, after the clocks go back</option>

@@ -2,7 +2,14 @@ import { Notice } from '@/components/ui/notice'
 import type { EvidenceItem } from '@/lib/schemas/decisions'
 
 const WORDS: Record<EvidenceItem, string> = {
-  screen: 'screen', hold: 'sedation hold', trial: 'breathing trial', rsbi: 'RSBI', settings: 'settings', gas: 'blood gas', cough: 'cough', secretions: 'secretions',
+  screen: 'screen',
+  hold: 'sedation hold',
+  trial: 'breathing trial',
+  rsbi: 'RSBI',
+  settings: 'settings',
+  gas: 'blood gas',
+  cough: 'cough',
+  secretions: 'secretions',
 }
 
 /** What nobody has recorded, in one line. Nothing is drawn when all is there. */

@@ -17,12 +17,21 @@ export function SignedDecision({ decision, timeZone, nowMs, amendHref }: Props) 
     <article className="border-t border-line py-4">
       <h3 className="flex flex-wrap items-baseline gap-x-3">
         <span className="figure text-lg font-semibold">{clockTime(decision.recordedAt, timeZone, nowMs)}</span>
-        <Tag shape="flag" tone="ink" className="text-lg">{sentenceCase(DECISION_WORDS[decision.choice])}</Tag>
+        <Tag shape="flag" tone="ink" className="text-lg">
+          {sentenceCase(DECISION_WORDS[decision.choice])}
+        </Tag>
       </h3>
       <p className="max-w-reading">{decision.statement}</p>
-      <p className="text-sm text-muted">Signature <span className="figure">{decision.contentHash.slice(0, HASH_SHOWN)}</span> over the decision and the evidence of that moment</p>
+      <p className="text-sm text-muted">
+        Signature <span className="figure">{decision.contentHash.slice(0, HASH_SHOWN)}</span> over the decision and the evidence
+        of that moment
+      </p>
       <EntryMeta entry={decision} timeZone={timeZone} nowMs={nowMs} />
-      {amendHref ? <Link href={amendHref} className="inline-flex min-h-[44px] items-center">Correct this decision</Link> : null}
+      {amendHref ? (
+        <Link href={amendHref} className="inline-flex min-h-[44px] items-center">
+          Correct this decision
+        </Link>
+      ) : null}
     </article>
   )
 }

@@ -29,11 +29,26 @@ export function useDecisionForm(dto: DecisionFormDto) {
 }
 
 function startFrom(dto: DecisionFormDto): DecisionInput {
-  const shared = { episodeId: dto.patient.episodeId, seenLatestId: dto.seenLatestId, recordAnyway: false, seenEvidenceHash: dto.evidenceHash, password: '' }
+  const shared = {
+    episodeId: dto.patient.episodeId,
+    seenLatestId: dto.seenLatestId,
+    recordAnyway: false,
+    seenEvidenceHash: dto.evidenceHash,
+    password: '',
+  }
   const { amending } = dto
   const today = { day: dto.wallClock.day, time: '' }
   if (!amending) {
-    return { ...shared, amends: null, choice: notAnswered(), reasons: [], lookAgain: today, supportAfter: null, steroidsPlanned: null, note: null }
+    return {
+      ...shared,
+      amends: null,
+      choice: notAnswered(),
+      reasons: [],
+      lookAgain: today,
+      supportAfter: null,
+      steroidsPlanned: null,
+      note: null,
+    }
   }
   const { choice, reasons, lookAgainAt, supportAfter, steroidsPlanned, note } = amending
   const lookAgain = lookAgainAt === null ? today : wallClock(lookAgainAt, dto.patient.timeZone)

@@ -15,15 +15,26 @@ type AmendPanelProps<Values extends FieldValues, Context, Output> = {
 }
 
 /** Says which version is being corrected, and asks why. */
-export function AmendPanel<Values extends FieldValues, Context, Output>({ form, entry, timeZone, nowMs }: AmendPanelProps<Values, Context, Output>) {
+export function AmendPanel<Values extends FieldValues, Context, Output>({
+  form,
+  entry,
+  timeZone,
+  nowMs,
+}: AmendPanelProps<Values, Context, Output>) {
   if (entry === null) return null
   return (
     <div className="mb-6 flex flex-col gap-3">
       <Notice tone="info" title="Correction">
-        You correct version {entry.entryVersion}, observed {clockTime(entry.observedAt, timeZone, nowMs)}, recorded by {entry.recordedByName}.
-        It stays readable below the new version.
+        You correct version {entry.entryVersion}, observed {clockTime(entry.observedAt, timeZone, nowMs)}, recorded by{' '}
+        {entry.recordedByName}. It stays readable below the new version.
       </Notice>
-      <TextField control={form.control} name={'amends.reason' as FieldPath<Values>} label="Why it is corrected" width={48} maxLength={500} />
+      <TextField
+        control={form.control}
+        name={'amends.reason' as FieldPath<Values>}
+        label="Why it is corrected"
+        width={48}
+        maxLength={500}
+      />
     </div>
   )
 }

@@ -44,7 +44,14 @@ export function BedsideForm<Values extends FieldValues, Context, Output>(props: 
     },
   })
   const refusal = refusalOf(mayRecord, patient.episodeEndedAt !== null && amending === null)
-  if (refusal) return <StepPage title={title} form={dto}><Notice tone="wait" title={refusal.title}>{refusal.text}</Notice></StepPage>
+  if (refusal)
+    return (
+      <StepPage title={title} form={dto}>
+        <Notice tone="wait" title={refusal.title}>
+          {refusal.text}
+        </Notice>
+      </StepPage>
+    )
   return (
     <StepPage title={amending ? `Correct: ${title.toLowerCase()}` : title} form={dto}>
       <UnsavedGuard isDirty={form.formState.isDirty} />
@@ -53,7 +60,9 @@ export function BedsideForm<Values extends FieldValues, Context, Output>(props: 
         {children}
         <ObservedField control={form.control} name={'observed' as FieldPath<Values>} timeZone={patient.timeZone} nowMs={nowMs} />
         <FormErrorSummary control={form.control} submit={submit} />
-        <div><SubmitButton isSending={submit.isSending}>{amending ? 'Record correction' : 'Record'}</SubmitButton></div>
+        <div>
+          <SubmitButton isSending={submit.isSending}>{amending ? 'Record correction' : 'Record'}</SubmitButton>
+        </div>
       </Form>
     </StepPage>
   )

@@ -17,7 +17,12 @@ export function CarriedValues({ observedAt, onConfirm, label, timeZone, nowMs }:
   if (times.length === 0) return null
   const at = Math.min(...times)
   return (
-    <Button variant="quiet" className="text-sm font-normal" onClick={onConfirm} aria-label={`Confirm ${label}, carried over from ${clockTime(at, timeZone, nowMs)}`}>
+    <Button
+      variant="quiet"
+      className="text-sm font-normal"
+      onClick={onConfirm}
+      aria-label={`Confirm ${label}, carried over from ${clockTime(at, timeZone, nowMs)}`}
+    >
       {clockTime(at, timeZone, nowMs)}, {formatDuration(nowMs - at)} ago · tap to confirm
     </Button>
   )

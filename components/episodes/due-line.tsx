@@ -7,7 +7,21 @@ import { MINUTE_MS } from '@/lib/shared/time'
 export function DueLine({ what, dueMs, nowMs, timeZone }: { what: string; dueMs: number; nowMs: number; timeZone: string }) {
   const at = clockTime(dueMs, timeZone, nowMs)
   const lateMs = nowMs - dueMs
-  if (lateMs >= MINUTE_MS) return <Tag shape="late" tone="stop">{what} was due {at}, late by {formatDuration(lateMs)}</Tag>
-  if (lateMs >= 0) return <Tag shape="dot" tone="dawn">{what} due now</Tag>
-  return <span className="text-muted">{what} due {at}, in {lateMs > -MINUTE_MS ? 'less than 1 min' : formatDuration(lateMs)}</span>
+  if (lateMs >= MINUTE_MS)
+    return (
+      <Tag shape="late" tone="stop">
+        {what} was due {at}, late by {formatDuration(lateMs)}
+      </Tag>
+    )
+  if (lateMs >= 0)
+    return (
+      <Tag shape="dot" tone="dawn">
+        {what} due now
+      </Tag>
+    )
+  return (
+    <span className="text-muted">
+      {what} due {at}, in {lateMs > -MINUTE_MS ? 'less than 1 min' : formatDuration(lateMs)}
+    </span>
+  )
 }

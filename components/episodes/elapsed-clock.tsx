@@ -11,7 +11,7 @@ export function elapsedText(ms: number): string {
 /** The large clock of a running hold or trial, counted by the server's time. */
 export function ElapsedClock({ sinceMs, nowMs, children }: { sinceMs: number; nowMs: number; children?: ReactNode }) {
   return (
-    <div className="tablet:text-right">
+    <div className="desk:text-right">
       <p role="timer" aria-label="Time since the start" className="figure text-5xl leading-none font-semibold tablet:text-6xl">
         {elapsedText(nowMs - sinceMs)}
       </p>

@@ -24,7 +24,8 @@ import { StepPage } from './step-page'
 import { useObservedNow } from './use-observed-now'
 import { useServerNow } from './use-server-now'
 
-const choices = <Word extends string>(list: readonly Word[], words: Record<Word, string>) => list.map((value) => ({ value, label: sentenceCase(words[value]) }))
+const choices = <Word extends string>(list: readonly Word[], words: Record<Word, string>) =>
+  list.map((value) => ({ value, label: sentenceCase(words[value]) }))
 /** Ends after which the patient breathes with other support, or none. */
 const WITH_SUPPORT = ['extubated', 'self_extubated', 'accidentally_extubated', 'ventilator_off']
 
@@ -32,10 +33,22 @@ const WITH_SUPPORT = ['extubated', 'self_extubated', 'accidentally_extubated', '
 export function EndPage({ dto }: { dto: EndFormDto }) {
   const { patient, episode, may } = dto
   if (episode.endedAt !== null) {
-    return <StepPage title="End ventilation" form={dto}><Notice tone="info" title="Ventilation has ended">It is on record since {clockTime(episode.endedAt, patient.timeZone, dto.nowMs)}.</Notice></StepPage>
+    return (
+      <StepPage title="End ventilation" form={dto}>
+        <Notice tone="info" title="Ventilation has ended">
+          It is on record since {clockTime(episode.endedAt, patient.timeZone, dto.nowMs)}.
+        </Notice>
+      </StepPage>
+    )
   }
   if (!may.end) {
-    return <StepPage title="End ventilation" form={dto}><Notice tone="wait" title="To read only">An RT, a nurse or a physician of this unit records the end of ventilation.</Notice></StepPage>
+    return (
+      <StepPage title="End ventilation" form={dto}>
+        <Notice tone="wait" title="To read only">
+          An RT, a nurse or a physician of this unit records the end of ventilation.
+        </Notice>
+      </StepPage>
+    )
   }
   return <EndForm dto={dto} />
 }
@@ -46,7 +59,14 @@ function EndForm({ dto }: { dto: EndFormDto }) {
   const nowMs = useServerNow(dto.nowMs)
   const form = useForm({
     resolver: zodResolver(endEpisodeSchema),
-    defaultValues: { episodeId: episode.id, version: episode.version, observed: dto.wallClock, supportAfter: null, reason: null, trialEnd: null },
+    defaultValues: {
+      episodeId: episode.id,
+      version: episode.version,
+      observed: dto.wallClock,
+      supportAfter: null,
+      reason: null,
+      trialEnd: null,
+    },
   })
   useObservedNow(form, nowMs, patient.timeZone, true)
   const end = useWatch({ control: form.control, name: 'end' })
@@ -65,10 +85,13 @@ function EndForm({ dto }: { dto: EndFormDto }) {
       <UnsavedGuard isDirty={form.formState.isDirty} />
       {signed ? (
         <Notice tone="calm" title="Decision signed" className="mb-6">
-          {sentenceCase(DECISION_WORDS[signed.choice])}, by {signed.byName} at {clockTime(signed.signedAt, patient.timeZone, nowMs)}.
+          {sentenceCase(DECISION_WORDS[signed.choice])}, by {signed.byName} at{' '}
+          {clockTime(signed.signedAt, patient.timeZone, nowMs)}.
         </Notice>
       ) : (
-        <Notice tone="wait" title="No signed decision to extubate" className="mb-6">A planned extubation without one asks for a reason below.</Notice>
+        <Notice tone="wait" title="No signed decision to extubate" className="mb-6">
+          A planned extubation without one asks for a reason below.
+        </Notice>
       )}
       <Form submit={submit} label="End ventilation" className="flex flex-col gap-6">
         <ChoiceField
@@ -76,6 +99,7 @@ function EndForm({ dto }: { dto: EndFormDto }) {
           name="end"
           label="How it ended"
           layout="stacked"
+          className="max-w-[28rem]"
           options={choices(EPISODE_ENDS, EPISODE_END_WORDS)}
           onChosen={(value) => {
             if (!WITH_SUPPORT.includes(String(value))) form.setValue('supportAfter', null)
@@ -83,18 +107,40 @@ function EndForm({ dto }: { dto: EndFormDto }) {
           }}
         />
         {end !== undefined && WITH_SUPPORT.includes(end) ? (
-          <ChoiceField control={form.control} name="supportAfter" label="Support afterwards" options={choices(SUPPORTS_AFTER, SUPPORT_WORDS)} clearLabel="not recorded" />
+          <ChoiceField
+            control={form.control}
+            name="supportAfter"
+            label="Support afterwards"
+            options={choices(SUPPORTS_AFTER, SUPPORT_WORDS)}
+            clearLabel="not recorded"
+          />
         ) : null}
         {asksTrial ? (
           <div className="flex flex-col gap-4 border-l-4 border-wait pl-4">
-            <ChoiceField control={form.control} name="trialEnd.outcome" label="A breathing trial is running: how did it end?" options={choices(TRIAL_OUTCOMES, TRIAL_OUTCOME_WORDS)} />
-            <TextareaField control={form.control} name="trialEnd.reason" label="Reason, when it was not passed or was cut short" rows={2} />
+            <ChoiceField
+              control={form.control}
+              name="trialEnd.outcome"
+              label="A breathing trial is running: how did it end?"
+              options={choices(TRIAL_OUTCOMES, TRIAL_OUTCOME_WORDS)}
+            />
+            <TextareaField
+              control={form.control}
+              name="trialEnd.reason"
+              label="Reason, when it was not passed or was cut short"
+              rows={2}
+            />
           </div>
         ) : null}
-        <TextareaField control={form.control} name="reason" label={end === 'extubated' && !signed ? 'Why without a signed decision' : 'Remark (may stay empty)'} />
+        <TextareaField
+          control={form.control}
+          name="reason"
+          label={end === 'extubated' && !signed ? 'Why without a signed decision' : 'Remark (may stay empty)'}
+        />
         <ObservedField control={form.control} name="observed" label="Ended at" timeZone={patient.timeZone} nowMs={nowMs} />
         <FormErrorSummary control={form.control} submit={submit} />
-        <div><SubmitButton isSending={submit.isSending}>Record the end of ventilation</SubmitButton></div>
+        <div>
+          <SubmitButton isSending={submit.isSending}>Record the end of ventilation</SubmitButton>
+        </div>
       </Form>
     </StepPage>
   )

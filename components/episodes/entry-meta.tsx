@@ -11,9 +11,22 @@ export function EntryMeta({ entry, timeZone, nowMs }: { entry: EntryDto; timeZon
       <span>
         Recorded {clockTime(entry.recordedAt, timeZone, nowMs)} by {entry.recordedByName}, protocol version {entry.protocolNumber}
       </span>
-      {entry.isLate ? <Tag shape="late" tone="muted">late entry</Tag> : null}
-      {entry.isAmended ? <Tag shape="info" tone="ink">corrected, version {entry.entryVersion}{entry.amendReason ? `: ${entry.amendReason}` : ''}</Tag> : null}
-      {unlikely.length > 0 ? <Tag shape="late" tone="stop">unusual, kept after a second look: {unlikely.join(', ')}</Tag> : null}
+      {entry.isLate ? (
+        <Tag shape="late" tone="muted">
+          late entry
+        </Tag>
+      ) : null}
+      {entry.isAmended ? (
+        <Tag shape="info" tone="ink">
+          corrected, version {entry.entryVersion}
+          {entry.amendReason ? `: ${entry.amendReason}` : ''}
+        </Tag>
+      ) : null}
+      {unlikely.length > 0 ? (
+        <Tag shape="late" tone="stop">
+          unusual, kept after a second look: {unlikely.join(', ')}
+        </Tag>
+      ) : null}
     </p>
   )
 }

@@ -20,14 +20,22 @@ export function NextMoveLine({ move, href, timeZone, nowMs, label = 'Next move' 
     <section aria-label={label} aria-live="polite" className="flex flex-col">
       <p className="text-sm text-muted">{label}</p>
       {href ? (
-        <Link href={href} className="flex min-h-[44px] items-center text-2xl font-bold text-dawn underline decoration-2 underline-offset-4">{title}</Link>
+        <Link
+          href={href}
+          className="flex min-h-[44px] items-center text-2xl font-bold text-dawn underline decoration-2 underline-offset-4"
+        >
+          {title}
+        </Link>
       ) : (
         <p className="text-2xl font-bold">{title}</p>
       )}
       <p className="text-muted">
         {detail}
         {lateness ? (
-          <span className="font-semibold whitespace-nowrap text-stop">{detail ? ' · ' : ''}<Mark shape="late" /> {lateness}</span>
+          <span className="font-semibold whitespace-nowrap text-stop">
+            {detail ? ' · ' : ''}
+            <Mark shape="late" /> {lateness}
+          </span>
         ) : null}
       </p>
     </section>

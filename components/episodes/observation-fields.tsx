@@ -24,14 +24,23 @@ type ObservationFieldsProps<Values extends FieldValues, Context, Output> = {
 }
 
 /** One look at the patient: numbers, RASS, and signs as large toggles. */
-export function ObservationFields<Values extends FieldValues, Context, Output>(props: ObservationFieldsProps<Values, Context, Output>) {
+export function ObservationFields<Values extends FieldValues, Context, Output>(
+  props: ObservationFieldsProps<Values, Context, Output>,
+) {
   const { form, at, numbers, hasGas = false, hasRass = true, signsLabel = 'Signs seen', besideOf, onTyped } = props
   const name = (reading: string) => `${at}.${reading}` as FieldPath<Values>
   return (
     <div className="flex flex-col gap-5">
       <div className="flex flex-wrap gap-x-5 gap-y-4">
         {numbers.map((reading) => (
-          <ReadingField key={reading} form={form} name={name(reading)} reading={reading} beside={besideOf?.(reading)} onTyped={() => onTyped?.(reading)} />
+          <ReadingField
+            key={reading}
+            form={form}
+            name={name(reading)}
+            reading={reading}
+            beside={besideOf?.(reading)}
+            onTyped={() => onTyped?.(reading)}
+          />
         ))}
       </div>
       {hasRass ? <RassChoice control={form.control} name={name('rass')} /> : null}
@@ -45,9 +54,13 @@ export function ObservationFields<Values extends FieldValues, Context, Output>(p
       />
       {hasGas ? (
         <details>
-          <summary className="min-h-[44px] cursor-pointer py-2.5 underline decoration-line decoration-2 underline-offset-4">Blood gas of this moment</summary>
+          <summary className="min-h-[44px] cursor-pointer py-2.5 underline decoration-line decoration-2 underline-offset-4">
+            Blood gas of this moment
+          </summary>
           <div className="flex flex-wrap gap-x-5 gap-y-4 pt-2">
-            {GAS_NUMBERS.map((reading) => <ReadingField key={reading} form={form} name={name(reading)} reading={reading} />)}
+            {GAS_NUMBERS.map((reading) => (
+              <ReadingField key={reading} form={form} name={name(reading)} reading={reading} />
+            ))}
           </div>
         </details>
       ) : null}

@@ -11,7 +11,13 @@ import { unlikelyNames } from './unlikely-names'
 
 type Row = EntryDto & { readings: ObservedReadings; minute?: number; opensEyesToVoice?: 'yes' | 'no' | null }
 
-const NUMBERS = ['breathsPerMin', 'tidalVolumeMl', 'spo2Percent', 'heartRatePerMin', 'rass'] as const satisfies readonly LimitedReading[]
+const NUMBERS = [
+  'breathsPerMin',
+  'tidalVolumeMl',
+  'spo2Percent',
+  'heartRatePerMin',
+  'rass',
+] as const satisfies readonly LimitedReading[]
 
 type ObservationTableProps = { rows: readonly Row[]; caption: string; timeZone: string; nowMs: number }
 
@@ -19,7 +25,11 @@ type ObservationTableProps = { rows: readonly Row[]; caption: string; timeZone: 
 export function ObservationTable({ rows, caption, timeZone, nowMs }: ObservationTableProps) {
   const hasMinute = rows.some((row) => row.minute !== undefined)
   const columns: Column<Row>[] = [
-    { key: 'time', heading: 'Observed', cell: (row) => <span className="figure">{clockTime(row.observedAt, timeZone, nowMs)}</span> },
+    {
+      key: 'time',
+      heading: 'Observed',
+      cell: (row) => <span className="figure">{clockTime(row.observedAt, timeZone, nowMs)}</span>,
+    },
     ...(hasMinute ? [{ key: 'minute', heading: 'Minute', isNumeric: true, cell: (row: Row) => row.minute ?? '' }] : []),
     ...NUMBERS.filter((reading) => rows.some((row) => row.readings[reading] !== null)).map((reading): Column<Row> => ({
       key: reading,
@@ -30,11 +40,24 @@ export function ObservationTable({ rows, caption, timeZone, nowMs }: Observation
         return value === null ? <NotObserved /> : readingText(reading, value)
       },
     })),
-    { key: 'bp', heading: 'Blood pressure, mmHg', isNumeric: true, cell: (row) => bloodPressureText(row.readings) ?? <NotObserved /> },
+    {
+      key: 'bp',
+      heading: 'Blood pressure, mmHg',
+      isNumeric: true,
+      cell: (row) => bloodPressureText(row.readings) ?? <NotObserved />,
+    },
     { key: 'signs', heading: 'Signs', cell: (row) => signsText(row) },
     { key: 'by', heading: 'Recorded by', cell: (row) => <RecordedBy row={row} timeZone={timeZone} nowMs={nowMs} /> },
   ]
-  return <DataTable caption={caption} columns={columns} rows={[...rows].reverse()} rowKey={(row) => row.id} empty="No observation yet." />
+  return (
+    <DataTable
+      caption={caption}
+      columns={columns}
+      rows={[...rows].reverse()}
+      rowKey={(row) => row.id}
+      empty="No observation yet."
+    />
+  )
 }
 
 /** "148/78", "148/not measured"; null when there is none. */
@@ -47,7 +70,12 @@ export function bloodPressureText(readings: Pick<ObservedReadings, 'systolicMmHg
 
 function signsText(row: Row): string {
   const signs = row.readings.signs.map((sign) => SIGN_WORDS[sign])
-  const eyes = row.opensEyesToVoice === 'yes' ? ['opens eyes to voice'] : row.opensEyesToVoice === 'no' ? ['does not open eyes to voice'] : []
+  const eyes =
+    row.opensEyesToVoice === 'yes'
+      ? ['opens eyes to voice']
+      : row.opensEyesToVoice === 'no'
+        ? ['does not open eyes to voice']
+        : []
   return [...eyes, ...(signs.length > 0 ? signs : ['no sign marked'])].join(', ')
 }
 
@@ -56,9 +84,21 @@ function RecordedBy({ row, timeZone, nowMs }: { row: Row; timeZone: string; nowM
   return (
     <span className="flex flex-col">
       <span>{row.recordedByName}</span>
-      {row.isLate ? <Tag shape="late" tone="muted" className="text-sm">late entry, {clockTime(row.recordedAt, timeZone, nowMs)}</Tag> : null}
-      {row.isAmended ? <Tag shape="info" tone="ink" className="text-sm">corrected</Tag> : null}
-      {unlikely.length > 0 ? <Tag shape="late" tone="stop" className="text-sm">unusual: {unlikely.join(', ')}</Tag> : null}
+      {row.isLate ? (
+        <Tag shape="late" tone="muted" className="text-sm">
+          late entry, {clockTime(row.recordedAt, timeZone, nowMs)}
+        </Tag>
+      ) : null}
+      {row.isAmended ? (
+        <Tag shape="info" tone="ink" className="text-sm">
+          corrected
+        </Tag>
+      ) : null}
+      {unlikely.length > 0 ? (
+        <Tag shape="late" tone="stop" className="text-sm">
+          unusual: {unlikely.join(', ')}
+        </Tag>
+      ) : null}
     </span>
   )
 }

@@ -21,7 +21,10 @@ export function PatientLine({ patient, isLink = true }: { patient: PatientLinePr
     <p className="flex flex-wrap items-baseline gap-x-3 gap-y-0.5">
       <span className="figure text-xl font-semibold text-ink">{patient.bedLabel}</span>
       {isLink ? (
-        <Link href={`/patients/${patient.patientId}`} className="inline-flex min-h-[44px] items-center text-ink underline decoration-line decoration-2 hover:decoration-ink">
+        <Link
+          href={`/patients/${patient.patientId}`}
+          className="inline-flex min-h-[44px] items-center text-ink underline decoration-line decoration-2 hover:decoration-ink"
+        >
           {name}
         </Link>
       ) : (
@@ -43,5 +46,7 @@ export function describePatient(patient: Omit<PatientLineProps, 'patientId' | 'b
     patient.ventilatorDayNumber === null ? null : `ventilator day ${patient.ventilatorDayNumber}`,
     who,
     patient.predictedBodyWeightKg === null ? 'PBW not computed' : `PBW ${patient.predictedBodyWeightKg.toFixed(1)} kg`,
-  ].filter((part) => part !== null).join(' · ')
+  ]
+    .filter((part) => part !== null)
+    .join(' · ')
 }

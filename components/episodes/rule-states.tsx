@@ -24,9 +24,15 @@ export function RuleStates({ rules, title, timeZone, nowMs }: RuleStatesProps) {
       <h2 className="font-semibold">{title}</h2>
       <div aria-live="polite">
         {loud.length === 0 ? (
-          <p className="text-muted">{quiet.length === unknownCount ? 'None can be judged yet.' : 'None met, none near by what was observed.'}</p>
+          <p className="text-muted">
+            {quiet.length === unknownCount ? 'None can be judged yet.' : 'None met, none near by what was observed.'}
+          </p>
         ) : (
-          <ul className="flex flex-col gap-2">{loud.map((rule) => <RuleLine key={rule.id} rule={rule} timeZone={timeZone} nowMs={nowMs} />)}</ul>
+          <ul className="flex flex-col gap-2">
+            {loud.map((rule) => (
+              <RuleLine key={rule.id} rule={rule} timeZone={timeZone} nowMs={nowMs} />
+            ))}
+          </ul>
         )}
       </div>
       {quiet.length > 0 ? (
@@ -34,7 +40,11 @@ export function RuleStates({ rules, title, timeZone, nowMs }: RuleStatesProps) {
           <summary className="min-h-[44px] cursor-pointer py-2.5 text-muted underline decoration-line decoration-2 underline-offset-4">
             {quietSummary(quiet.length - unknownCount, unknownCount)}
           </summary>
-          <ul className="flex flex-col gap-2 pt-1">{quiet.map((rule) => <RuleLine key={rule.id} rule={rule} timeZone={timeZone} nowMs={nowMs} />)}</ul>
+          <ul className="flex flex-col gap-2 pt-1">
+            {quiet.map((rule) => (
+              <RuleLine key={rule.id} rule={rule} timeZone={timeZone} nowMs={nowMs} />
+            ))}
+          </ul>
         </details>
       ) : null}
     </section>

@@ -10,7 +10,10 @@ import { MINUTE_MS } from '@/lib/shared/time'
  * The first key or tap in the form holds the minute. Off for a correction, which starts from the time recorded before.
  */
 export function useObservedNow<Values extends FieldValues, Context, Output>(
-  form: UseFormReturn<Values, Context, Output>, nowMs: number, timeZone: string, isOn: boolean,
+  form: UseFormReturn<Values, Context, Output>,
+  nowMs: number,
+  timeZone: string,
+  isOn: boolean,
 ): void {
   const { isDirty } = form.formState
   const minute = Math.floor(nowMs / MINUTE_MS)

@@ -20,13 +20,30 @@ export function GasPage({ dto }: { dto: GasFormDto }) {
   const { patient } = dto
   const form = useGasForm(dto)
   return (
-    <BedsideForm dto={dto} form={form} title="Blood gas" path={`/api/episodes/${patient.episodeId}/gases`} mayRecord={dto.may.record} nowMs={nowMs}>
+    <BedsideForm
+      dto={dto}
+      form={form}
+      title="Blood gas"
+      path={`/api/episodes/${patient.episodeId}/gases`}
+      mayRecord={dto.may.record}
+      nowMs={nowMs}
+    >
       <div className="flex flex-wrap gap-x-6 gap-y-4">
-        {NEEDED.map((name) => <ReadingField key={name} form={form} name={name} reading={name} label={name === 'fio2Fraction' ? 'FiO2 when drawn' : undefined} />)}
+        {NEEDED.map((name) => (
+          <ReadingField
+            key={name}
+            form={form}
+            name={name}
+            reading={name}
+            label={name === 'fio2Fraction' ? 'FiO2 when drawn' : undefined}
+          />
+        ))}
       </div>
       <PfLine form={form} isAdult={patient.isAdult} />
       <div className="flex flex-wrap gap-x-6 gap-y-4">
-        {FURTHER.map((name) => <ReadingField key={name} form={form} name={name} reading={name} hint="may stay empty" />)}
+        {FURTHER.map((name) => (
+          <ReadingField key={name} form={form} name={name} reading={name} hint="may stay empty" />
+        ))}
       </div>
     </BedsideForm>
   )
@@ -43,7 +60,9 @@ function useGasForm({ amending, patient, wallClock: now }: GasFormDto) {
       bicarbonateMmolPerL: amending?.bicarbonateMmolPerL ?? null,
       lactateMmolPerL: amending?.lactateMmolPerL ?? null,
       haemoglobinGPerDl: amending?.haemoglobinGPerDl ?? null,
-      ...(amending ? { ph: amending.ph, paCO2MmHg: amending.paCO2MmHg, paO2MmHg: amending.paO2MmHg, fio2Fraction: amending.fio2Fraction } : {}),
+      ...(amending
+        ? { ph: amending.ph, paCO2MmHg: amending.paCO2MmHg, paO2MmHg: amending.paO2MmHg, fio2Fraction: amending.fio2Fraction }
+        : {}),
     },
   })
 }

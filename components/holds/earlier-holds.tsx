@@ -23,19 +23,29 @@ export function EarlierHolds({ holds, timeZone, nowMs }: { holds: readonly HoldD
   if (holds.length === 0) return null
   return (
     <section className="mt-10" aria-labelledby="earlier-holds">
-      <h2 id="earlier-holds" className="mb-2 text-lg font-bold">Recorded today</h2>
+      <h2 id="earlier-holds" className="mb-2 text-lg font-bold">
+        Recorded today
+      </h2>
       <ul>
         {holds.map((hold) => {
           const look = holdLook(hold.start, hold.end?.outcome ?? null)
           const present = HOLD_SAFETY_ITEMS.filter((item) => hold.safety?.[item] === true)
-          const details = [...present.map((item) => HOLD_SAFETY_WORDS[item]), ...(hold.end?.rulesMet.map(({ words }) => words) ?? []), hold.note, hold.end?.note].filter(Boolean)
+          const details = [
+            ...present.map((item) => HOLD_SAFETY_WORDS[item]),
+            ...(hold.end?.rulesMet.map(({ words }) => words) ?? []),
+            hold.note,
+            hold.end?.note,
+          ].filter(Boolean)
           return (
             <li key={hold.id} className="border-t border-line py-3">
               <p className="flex flex-wrap items-baseline gap-x-3">
                 <span className="figure text-lg font-semibold">
-                  {clockTime(hold.observedAt, timeZone, nowMs)}{hold.end ? `–${clockTime(hold.end.observedAt, timeZone, nowMs)}` : ''}
+                  {clockTime(hold.observedAt, timeZone, nowMs)}
+                  {hold.end ? `–${clockTime(hold.end.observedAt, timeZone, nowMs)}` : ''}
                 </span>
-                <Tag shape={look.shape} tone={look.tone}>{look.words}</Tag>
+                <Tag shape={look.shape} tone={look.tone}>
+                  {look.words}
+                </Tag>
                 <span className="text-muted">{details.map((each) => sentenceCase(each ?? '')).join('. ')}</span>
               </p>
               {hold.end?.outcome === 'not_tolerated' ? <RestartList restarts={hold.end.restarts} fraction={null} /> : null}

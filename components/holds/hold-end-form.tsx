@@ -45,7 +45,8 @@ export function HoldEndForm({ dto, holdId, hold, outcome, amending, nowMs, onBac
   const form = useForm({
     resolver: zodResolver(endHoldSchema),
     defaultValues: {
-      episodeId, holdId,
+      episodeId,
+      holdId,
       observed: amending ? wallClock(amending.observedAt, timeZone) : wallClock(nowMs, timeZone),
       amends: amending ? { id: amending.id, reason: '' } : null,
       outcome: amending?.outcome ?? outcome,
@@ -69,31 +70,59 @@ export function HoldEndForm({ dto, holdId, hold, outcome, amending, nowMs, onBac
   return (
     <section aria-labelledby="end-hold" className="border-t-2 border-ink pt-4">
       <UnsavedGuard isDirty={form.formState.isDirty} />
-      <h2 id="end-hold" className="mb-3 text-lg font-bold">End of the hold</h2>
+      <h2 id="end-hold" className="mb-3 text-lg font-bold">
+        End of the hold
+      </h2>
       <AmendPanel form={form} entry={amending} timeZone={timeZone} nowMs={nowMs} />
       <Form submit={submit} label="End of the hold" className="flex flex-col gap-6">
-        <ChoiceField control={form.control} name="outcome" label="Outcome" options={HOLD_OUTCOMES.map((value) => ({ value, label: sentenceCase(HOLD_OUTCOME_WORDS[value]) }))} />
+        <ChoiceField
+          control={form.control}
+          name="outcome"
+          label="Outcome"
+          options={HOLD_OUTCOMES.map((value) => ({ value, label: sentenceCase(HOLD_OUTCOME_WORDS[value]) }))}
+        />
         {chosen === 'not_tolerated' ? (
           <>
             {alreadyMet.length > 0 ? <p>Met by the observations: {alreadyMet.map(({ words }) => words).join('; ')}.</p> : null}
-            <CheckListField control={form.control} name="rulesMet" label="What else ended it" tone="stop" options={others.map((rule) => ({ value: rule.id, label: sentenceCase(describeRule(rule)) }))} />
+            <CheckListField
+              control={form.control}
+              name="rulesMet"
+              label="What else ended it"
+              tone="stop"
+              options={others.map((rule) => ({ value: rule.id, label: sentenceCase(describeRule(rule)) }))}
+            />
             {hold ? (
               <div className="grid gap-6 desk:grid-cols-2">
                 <section>
                   <h3 className="font-semibold">If sedation is restarted</h3>
                   <RestartList restarts={hold.restartsIfNotTolerated} fraction={hold.restartFraction} />
                 </section>
-                <InfusionList infusions={hold.infusions} />
+                <InfusionList infusions={hold.infusions} isPainOnly />
               </div>
             ) : null}
           </>
         ) : null}
-        <TextareaField control={form.control} name="note" label={chosen === 'stopped' ? 'Why it was stopped' : 'Note'} rows={2} maxLength={1000} hint={chosen === 'tolerated' && hold !== null && !hold.isTolerated ? 'The record does not show that it was tolerated yet: say what you saw.' : undefined} />
+        <TextareaField
+          control={form.control}
+          name="note"
+          label={chosen === 'stopped' ? 'Why it was stopped' : 'Note'}
+          rows={2}
+          maxLength={1000}
+          hint={
+            chosen === 'tolerated' && hold !== null && !hold.isTolerated
+              ? 'The record does not show that it was tolerated yet: say what you saw.'
+              : undefined
+          }
+        />
         <ObservedField control={form.control} name="observed" timeZone={timeZone} nowMs={nowMs} label="Ended at" />
         <FormErrorSummary control={form.control} submit={submit} />
         <div className="flex flex-wrap gap-3">
           <SubmitButton isSending={submit.isSending}>{amending ? 'Record correction' : 'Record the end'}</SubmitButton>
-          {onBack ? <Button variant="quiet" onClick={onBack}>Back to the running hold</Button> : null}
+          {onBack ? (
+            <Button variant="quiet" onClick={onBack}>
+              Back to the running hold
+            </Button>
+          ) : null}
         </div>
       </Form>
     </section>

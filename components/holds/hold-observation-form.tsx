@@ -21,7 +21,10 @@ import { wallClock } from '@/lib/client/wall-clock'
 import { observeHoldSchema, type HoldFormDto, type HoldObservationDto } from '@/lib/schemas/holds'
 
 const NUMBERS = ['breathsPerMin', 'spo2Percent', 'heartRatePerMin', 'systolicMmHg', 'diastolicMmHg'] as const
-const EYES = [{ value: 'yes', label: 'yes' }, { value: 'no', label: 'no' }]
+const EYES = [
+  { value: 'yes', label: 'yes' },
+  { value: 'no', label: 'no' },
+]
 
 type Props = { dto: HoldFormDto; holdId: string; amending: HoldObservationDto | null; nowMs: number }
 
@@ -32,7 +35,8 @@ export function HoldObservationForm({ dto, holdId, amending, nowMs }: Props) {
   const form = useForm({
     resolver: zodResolver(observeHoldSchema),
     defaultValues: {
-      episodeId, holdId,
+      episodeId,
+      holdId,
       observed: amending ? wallClock(amending.observedAt, timeZone) : dto.wallClock,
       amends: amending ? { id: amending.id, reason: '' } : null,
       readings: amending?.readings ?? NO_OBSERVATION,
@@ -53,14 +57,24 @@ export function HoldObservationForm({ dto, holdId, amending, nowMs }: Props) {
   return (
     <section aria-labelledby="observe-hold" className="border-t-2 border-ink pt-4">
       <UnsavedGuard isDirty={form.formState.isDirty} />
-      <h2 id="observe-hold" className="mb-3 text-lg font-bold">{amending ? 'Observation' : 'Add an observation'}</h2>
+      <h2 id="observe-hold" className="mb-3 text-lg font-bold">
+        {amending ? 'Observation' : 'Add an observation'}
+      </h2>
       <AmendPanel form={form} entry={amending} timeZone={timeZone} nowMs={nowMs} />
       <Form submit={submit} label="Observation during the hold" className="flex flex-col gap-5">
-        <ChoiceField control={form.control} name="opensEyesToVoice" label="Opens eyes to voice" options={EYES} clearLabel="not assessed" />
+        <ChoiceField
+          control={form.control}
+          name="opensEyesToVoice"
+          label="Opens eyes to voice"
+          options={EYES}
+          clearLabel="not assessed"
+        />
         <ObservationFields form={form} at="readings" numbers={NUMBERS} />
         <ObservedField control={form.control} name="observed" timeZone={timeZone} nowMs={nowMs} />
         <FormErrorSummary control={form.control} submit={submit} />
-        <div><SubmitButton isSending={submit.isSending}>{amending ? 'Record correction' : 'Record observation'}</SubmitButton></div>
+        <div>
+          <SubmitButton isSending={submit.isSending}>{amending ? 'Record correction' : 'Record observation'}</SubmitButton>
+        </div>
       </Form>
     </section>
   )

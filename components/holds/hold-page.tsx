@@ -69,14 +69,25 @@ function screenWords(dto: HoldFormDto, nowMs: number): string {
 
 function WhyNot({ dto }: { dto: HoldFormDto }) {
   if (dto.patient.isAdult !== true) return null
-  if (dto.patient.episodeEndedAt !== null) return <Notice tone="info" title="Ventilation has ended">No hold can be started any more.</Notice>
-  return <Notice tone="wait" title="To read only">A nurse or a physician of this unit records the sedation hold.</Notice>
+  if (dto.patient.episodeEndedAt !== null)
+    return (
+      <Notice tone="info" title="Ventilation has ended">
+        No hold can be started any more.
+      </Notice>
+    )
+  return (
+    <Notice tone="wait" title="To read only">
+      A nurse or a physician of this unit records the sedation hold.
+    </Notice>
+  )
 }
 
 function Correction({ dto, nowMs }: { dto: HoldFormDto; nowMs: number }) {
   const { amending } = dto
   if (amending?.kind === 'start') return <HoldStartForm dto={dto} nowMs={nowMs} />
-  if (amending?.kind === 'observation') return <HoldObservationForm dto={dto} holdId={amending.holdId} amending={amending.observation} nowMs={nowMs} />
-  if (amending?.kind === 'end') return <HoldEndForm dto={dto} holdId={amending.holdId} hold={null} amending={amending.end} nowMs={nowMs} />
+  if (amending?.kind === 'observation')
+    return <HoldObservationForm dto={dto} holdId={amending.holdId} amending={amending.observation} nowMs={nowMs} />
+  if (amending?.kind === 'end')
+    return <HoldEndForm dto={dto} holdId={amending.holdId} hold={null} amending={amending.end} nowMs={nowMs} />
   return null
 }

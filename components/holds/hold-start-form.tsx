@@ -60,16 +60,32 @@ export function HoldStartForm({ dto, nowMs }: { dto: HoldFormDto; nowMs: number 
   return (
     <div ref={frame}>
       <UnsavedGuard isDirty={form.formState.isDirty} />
-      <AmendPanel form={form} entry={dto.amending?.kind === 'start' ? dto.amending.hold : null} timeZone={timeZone} nowMs={nowMs} />
+      <AmendPanel
+        form={form}
+        entry={dto.amending?.kind === 'start' ? dto.amending.hold : null}
+        timeZone={timeZone}
+        nowMs={nowMs}
+      />
       <Form submit={submit} label="Sedation hold" className="flex flex-col gap-8">
-        <ChoiceField control={form.control} name="start" label="Sedation" layout="stacked" options={SEDATION} className="max-w-reading" />
+        <ChoiceField
+          control={form.control}
+          name="start"
+          label="Sedation"
+          layout="stacked"
+          options={SEDATION}
+          className="max-w-reading"
+        />
         {isRunning ? (
           <>
             <fieldset className="flex flex-col">
               <legend className="mb-1 text-lg font-bold">Safety screen: is any of these present?</legend>
               {items.map((item) => (
                 <div key={item} className="border-t border-line py-3">
-                  <YesNoField control={form.control} name={`safety.${item}` as FieldPath<HoldStartInput>} label={sentenceCase(HOLD_SAFETY_WORDS[item])} />
+                  <YesNoField
+                    control={form.control}
+                    name={`safety.${item}` as FieldPath<HoldStartInput>}
+                    label={sentenceCase(HOLD_SAFETY_WORDS[item])}
+                  />
                 </div>
               ))}
               <SafetyVerdict verdict={verdict} />
@@ -80,9 +96,15 @@ export function HoldStartForm({ dto, nowMs }: { dto: HoldFormDto; nowMs: number 
                 <div>
                   <Button
                     variant="quiet"
-                    onClick={() => form.setValue('infusions', dto.lastInfusions?.infusions.map(withoutRate) ?? [], { shouldDirty: true, shouldValidate: form.formState.isSubmitted })}
+                    onClick={() =>
+                      form.setValue('infusions', dto.lastInfusions?.infusions.map(withoutRate) ?? [], {
+                        shouldDirty: true,
+                        shouldValidate: form.formState.isSubmitted,
+                      })
+                    }
                   >
-                    Fill in the drugs of the last hold ({clockTime(dto.lastInfusions.observedAt, timeZone, nowMs)}); rates are read again
+                    Fill in the drugs of the last hold ({clockTime(dto.lastInfusions.observedAt, timeZone, nowMs)}); rates are
+                    read again
                   </Button>
                 </div>
               ) : null}
@@ -90,7 +112,13 @@ export function HoldStartForm({ dto, nowMs }: { dto: HoldFormDto; nowMs: number 
           </>
         ) : null}
         <TextareaField control={form.control} name="note" label="Note, if needed" rows={2} maxLength={1000} />
-        <ObservedField control={form.control} name="observed" timeZone={timeZone} nowMs={nowMs} label={isRunning && verdict.result !== 'unsafe' ? 'Hold starts at' : 'Assessed at'} />
+        <ObservedField
+          control={form.control}
+          name="observed"
+          timeZone={timeZone}
+          nowMs={nowMs}
+          label={isRunning && verdict.result !== 'unsafe' ? 'Hold starts at' : 'Assessed at'}
+        />
         <FormErrorSummary control={form.control} submit={submit} />
         <div>
           <SubmitButton isSending={submit.isSending}>{submitWords(sedation, verdict.result, isAmending)}</SubmitButton>
@@ -100,10 +128,14 @@ export function HoldStartForm({ dto, nowMs }: { dto: HoldFormDto; nowMs: number 
         failure={submit.failure}
         patientId={patientId}
         what="hold"
-        onRecordAnyway={isAmending ? undefined : () => {
-          form.setValue('recordAnyway', true)
-          frame.current?.querySelector('form')?.requestSubmit()
-        }}
+        onRecordAnyway={
+          isAmending
+            ? undefined
+            : () => {
+                form.setValue('recordAnyway', true)
+                frame.current?.querySelector('form')?.requestSubmit()
+              }
+        }
       />
     </div>
   )

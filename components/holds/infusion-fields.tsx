@@ -25,12 +25,24 @@ export function InfusionFields({ form }: { form: UseFormReturn<HoldStartInput> }
     <fieldset className="flex flex-col gap-4" data-invalid={message ? '' : undefined}>
       <legend className="mb-2 text-lg font-bold">Continuous infusions running now</legend>
       {fields.map((field, index) => (
-        <div key={field.id} role="group" aria-label={`Infusion ${index + 1}`} className="flex flex-wrap items-end gap-x-4 gap-y-3 border-t border-line pt-3">
+        <div
+          key={field.id}
+          role="group"
+          aria-label={`Infusion ${index + 1}`}
+          className="flex flex-wrap items-end gap-x-4 gap-y-3 border-t border-line pt-3"
+        >
           <TextField control={form.control} name={`infusions.${index}.drug`} label="Drug" width={18} maxLength={60} />
           <NumberField control={form.control} name={`infusions.${index}.rate`} label="Rate" digits={6} />
-          <SelectField control={form.control} name={`infusions.${index}.unit`} label="Unit" options={INFUSION_UNITS.map((unit) => ({ value: unit, label: unit }))} />
+          <SelectField
+            control={form.control}
+            name={`infusions.${index}.unit`}
+            label="Unit"
+            options={INFUSION_UNITS.map((unit) => ({ value: unit, label: unit }))}
+          />
           <ChoiceField control={form.control} name={`infusions.${index}.purpose`} label="Given" options={PURPOSES} />
-          <Button variant="quiet" onClick={() => remove(index)} aria-label={`Remove infusion ${index + 1}`}>Remove</Button>
+          <Button variant="quiet" onClick={() => remove(index)} aria-label={`Remove infusion ${index + 1}`}>
+            Remove
+          </Button>
         </div>
       ))}
       <div>

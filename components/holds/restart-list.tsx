@@ -21,7 +21,10 @@ export function RestartList({ restarts, fraction }: { restarts: readonly Restart
         ))}
       </ul>
       <p className="mt-1 text-sm text-muted">
-        {fraction === null ? 'Computed from the rate before' : `${fraction === 0.5 ? 'Half' : `${rateNumber(fraction * 100)} %`} of the rate before, computed`}. The prescriber decides whether and at what rate it is restarted.
+        {fraction === null
+          ? 'Computed from the rate before'
+          : `${fraction === 0.5 ? 'Half' : `${rateNumber(fraction * 100)} %`} of the rate before, computed`}
+        . The prescriber decides whether and at what rate it is restarted.
       </p>
     </div>
   )

@@ -27,11 +27,15 @@ export function RunningHold({ dto, hold, nowMs }: RunningHoldProps) {
         </div>
         <InfusionList infusions={hold.infusions} />
       </div>
-      {ending === null && dto.may.observe ? <HoldObservationForm dto={dto} holdId={hold.entryId} amending={null} nowMs={nowMs} /> : null}
+      {ending === null && dto.may.observe ? (
+        <HoldObservationForm dto={dto} holdId={hold.entryId} amending={null} nowMs={nowMs} />
+      ) : null}
       {dto.may.end ? (
         ending === null ? (
           <section aria-labelledby="end-hold" className="border-t-2 border-ink pt-4">
-            <h2 id="end-hold" className="mb-3 text-lg font-bold">End the hold</h2>
+            <h2 id="end-hold" className="mb-3 text-lg font-bold">
+              End the hold
+            </h2>
             <div className="flex flex-wrap gap-3">
               <Button onClick={() => setEnding('tolerated')}>Tolerated</Button>
               <Button onClick={() => setEnding('not_tolerated')}>Not tolerated</Button>
@@ -39,7 +43,16 @@ export function RunningHold({ dto, hold, nowMs }: RunningHoldProps) {
             </div>
           </section>
         ) : (
-          <HoldEndForm key={ending} dto={dto} holdId={hold.entryId} hold={hold} outcome={ending} amending={null} nowMs={nowMs} onBack={() => setEnding(null)} />
+          <HoldEndForm
+            key={ending}
+            dto={dto}
+            holdId={hold.entryId}
+            hold={hold}
+            outcome={ending}
+            amending={null}
+            nowMs={nowMs}
+            onBack={() => setEnding(null)}
+          />
         )
       ) : null}
       <ObservationTable rows={hold.observations} caption="Observations of this hold" timeZone={timeZone} nowMs={nowMs} />
@@ -49,8 +62,25 @@ export function RunningHold({ dto, hold, nowMs }: RunningHoldProps) {
 
 function ToleranceLine({ hold, nowMs, timeZone }: Pick<RunningHoldProps, 'hold' | 'nowMs'> & { timeZone: string }) {
   const byTime = clockTime(hold.toleratedByTimeAtMs, timeZone, nowMs)
-  const eyes = hold.eyesOpenedAtMs === null ? 'Eyes opening to voice not recorded so far.' : `Eyes opened to voice at ${clockTime(hold.eyesOpenedAtMs, timeZone, nowMs)}.`
-  if (hold.rules.some(({ state }) => state === 'met')) return <Notice tone="stop" title="A limit that ends the hold is met" role="status">{eyes}</Notice>
-  if (hold.isTolerated) return <Notice tone="calm" title="Counts as tolerated by the unit’s protocol" role="status">{eyes} No limit is met by what was observed.</Notice>
-  return <Notice tone="info" title="Hold running">{eyes} It counts as tolerated when the eyes open to voice, or by duration at {byTime}, if no limit is met.</Notice>
+  const eyes =
+    hold.eyesOpenedAtMs === null
+      ? 'Eyes opening to voice not recorded so far.'
+      : `Eyes opened to voice at ${clockTime(hold.eyesOpenedAtMs, timeZone, nowMs)}.`
+  if (hold.rules.some(({ state }) => state === 'met'))
+    return (
+      <Notice tone="stop" title="A limit that ends the hold is met" role="status">
+        {eyes}
+      </Notice>
+    )
+  if (hold.isTolerated)
+    return (
+      <Notice tone="calm" title="Counts as tolerated by the unit’s protocol" role="status">
+        {eyes} No limit is met by what was observed.
+      </Notice>
+    )
+  return (
+    <Notice tone="info" title="Hold running">
+      {eyes} It counts as tolerated when the eyes open to voice, or by duration at {byTime}, if no limit is met.
+    </Notice>
+  )
 }

@@ -28,7 +28,9 @@ export function useHoldStart(dto: HoldFormDto) {
     const result = judgeSafety(items, answers).result
     if (typed.start === 'started' && result === 'incomplete') return { values: {}, errors: unanswered(items, answers) }
     if (typed.start === 'not_needed') return parse({ ...typed, safety: null, infusions: [] }, context, options)
-    const safety = Object.fromEntries(items.filter((item) => typeof answers[item] === 'boolean').map((item) => [item, answers[item]]))
+    const safety = Object.fromEntries(
+      items.filter((item) => typeof answers[item] === 'boolean').map((item) => [item, answers[item]]),
+    )
     const start = typed.start === 'started' && result === 'unsafe' ? 'unsafe' : typed.start
     return parse({ ...typed, start, safety: safety as HoldStartInput['safety'] }, context, options)
   }
@@ -46,8 +48,13 @@ function startFrom(dto: HoldFormDto): HoldStartInput {
   if (dto.amending?.kind === 'start') {
     const { hold } = dto.amending
     return {
-      ...shared, observed: wallClock(hold.observedAt, dto.patient.timeZone), amends: { id: hold.id, reason: '' },
-      start: hold.start === 'not_needed' ? 'not_needed' : 'started', safety: hold.safety ?? {}, infusions: hold.infusions.map(toInfusionInput), note: hold.note,
+      ...shared,
+      observed: wallClock(hold.observedAt, dto.patient.timeZone),
+      amends: { id: hold.id, reason: '' },
+      start: hold.start === 'not_needed' ? 'not_needed' : 'started',
+      safety: hold.safety ?? {},
+      infusions: hold.infusions.map(toInfusionInput),
+      note: hold.note,
     }
   }
   return { ...shared, observed: dto.wallClock, amends: null, start: notAnswered(), safety: {}, infusions: [], note: null }

@@ -28,7 +28,8 @@ const isTrouble = ({ state }: MailEntryDto) => state === 'failed' || state === '
 /** The ledger: what failed or is not confirmed on top, then everything newest first. */
 export function MailLedger({ data }: { data: MailPageDto }) {
   const { entries } = data
-  if (entries.length === 0) return <p className="text-muted">Nothing has been sent yet. Messages stand here from the first list on.</p>
+  if (entries.length === 0)
+    return <p className="text-muted">Nothing has been sent yet. Messages stand here from the first list on.</p>
   const ordered = [...entries.filter(isTrouble), ...entries.filter((entry) => !isTrouble(entry))]
   return (
     <ul className="border-t border-line">
@@ -49,17 +50,30 @@ function MailEntry({ entry, data }: { entry: MailEntryDto; data: MailPageDto }) 
     <>
       <div className="flex flex-wrap items-baseline justify-between gap-x-6 gap-y-1">
         <p className="font-semibold">{sentenceCase(MAIL_KIND_WORDS[entry.kind])}</p>
-        <Tag shape={look.shape} tone={look.tone}>{MAIL_STATE_WORDS[entry.state]}</Tag>
+        <Tag shape={look.shape} tone={look.tone}>
+          {MAIL_STATE_WORDS[entry.state]}
+        </Tag>
       </div>
       <p className="text-muted">
         To {entry.personName ?? 'an address of the unit'}
-        {entry.recipient ? <span className="break-all"> ({entry.recipient})</span> : null}, queued <span className="figure">{time(entry.queuedAt)}</span>
-        {entry.sentAt === null ? null : <>, {MAIL_STATE_WORDS[entry.state]} <span className="figure">{time(entry.sentAt)}</span></>}
-        {entry.state === 'queued' && entry.attempts > 0 ? <>, next attempt <span className="figure">{time(entry.nextAttemptAt)}</span></> : null}
+        {entry.recipient ? <span className="break-all"> ({entry.recipient})</span> : null}, queued{' '}
+        <span className="figure">{time(entry.queuedAt)}</span>
+        {entry.sentAt === null ? null : (
+          <>
+            , {MAIL_STATE_WORDS[entry.state]} <span className="figure">{time(entry.sentAt)}</span>
+          </>
+        )}
+        {entry.state === 'queued' && entry.attempts > 0 ? (
+          <>
+            , next attempt <span className="figure">{time(entry.nextAttemptAt)}</span>
+          </>
+        ) : null}
       </p>
       {entry.lastError ? <p className="text-stop">{entry.lastError}</p> : null}
       <details>
-        <summary className="inline-flex min-h-[44px] cursor-pointer items-center underline underline-offset-4">Read the message: {entry.subject}</summary>
+        <summary className="inline-flex min-h-[44px] cursor-pointer items-center underline underline-offset-4">
+          Read the message: {entry.subject}
+        </summary>
         <pre className="whitespace-pre-wrap break-words border-l-4 border-line py-2 pl-4 font-sans">{entry.bodyText}</pre>
       </details>
       {maySchedule && isTrouble(entry) ? <SendAgain unitId={unit.id} mailId={entry.id} subject={entry.subject} /> : null}
@@ -76,10 +90,16 @@ function SendAgain({ unitId, mailId, subject }: { unitId: string; mailId: string
   })
   return (
     <div>
-      <Button onClick={() => { if (!sending.isPending) sending.mutate() }}>
+      <Button
+        onClick={() => {
+          if (!sending.isPending) sending.mutate()
+        }}
+      >
         Send again<span className="sr-only">: {subject}</span>
       </Button>
-      <p role="status" className="text-stop">{sending.isError ? failureMessage(sending.error) : ''}</p>
+      <p role="status" className="text-stop">
+        {sending.isError ? failureMessage(sending.error) : ''}
+      </p>
     </div>
   )
 }

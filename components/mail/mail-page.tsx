@@ -22,6 +22,7 @@ export function MailPage({ initial }: { initial: MailPageDto }) {
     initialData: initial,
     refetchInterval: REFRESH_MS,
   })
+  const [savedVersion, setSavedVersion] = useState<number | null>(null)
   return (
     <>
       <PageHeading title="Mail" below={`${data.unit.name}. Messages name beds, never patients.`} />
@@ -32,18 +33,30 @@ export function MailPage({ initial }: { initial: MailPageDto }) {
       ) : null}
       <div className="grid gap-10 desk:grid-cols-[minmax(0,2fr)_minmax(18rem,1fr)]">
         <section aria-labelledby="mail-ledger">
-          <h2 id="mail-ledger" className="mb-3 text-xl font-bold">What went</h2>
+          <h2 id="mail-ledger" className="mb-3 text-xl font-bold">
+            What went
+          </h2>
           <MailLedger data={data} />
         </section>
         <div className="flex flex-col gap-10">
           <section aria-labelledby="mail-next">
-            <h2 id="mail-next" className="mb-3 text-xl font-bold">What goes next</h2>
+            <h2 id="mail-next" className="mb-3 text-xl font-bold">
+              What goes next
+            </h2>
             <Upcoming data={data} />
           </section>
           {data.maySchedule && data.schedule ? (
             <section aria-labelledby="mail-schedule">
-              <h2 id="mail-schedule" className="mb-3 text-xl font-bold">When it goes</h2>
-              <MailScheduleForm key={data.schedule.version} unitId={data.unit.id} schedule={data.schedule} />
+              <h2 id="mail-schedule" className="mb-3 text-xl font-bold">
+                When it goes
+              </h2>
+              <MailScheduleForm
+                key={data.schedule.version}
+                unitId={data.unit.id}
+                schedule={data.schedule}
+                isJustSaved={savedVersion === data.schedule.version}
+                onSaved={setSavedVersion}
+              />
             </section>
           ) : null}
         </div>
@@ -56,7 +69,9 @@ function Upcoming({ data }: { data: MailPageDto }) {
   const { upcoming, unit, nowMs, schedule } = data
   return (
     <>
-      {upcoming.length === 0 ? <p className="text-muted">No scheduled list is switched on. The unit lead can switch one on here.</p> : null}
+      {upcoming.length === 0 ? (
+        <p className="text-muted">No scheduled list is switched on. The unit lead can switch one on here.</p>
+      ) : null}
       <ul className="flex flex-col gap-3">
         {upcoming.map(({ kind, atMs, toRoles, recipients }) => (
           <li key={kind}>
@@ -72,7 +87,9 @@ function Upcoming({ data }: { data: MailPageDto }) {
         ))}
       </ul>
       {schedule?.isDecisionOwedOn ? (
-        <p className="mt-3 text-muted">Decision owed goes to the physicians as soon as a passed trial has waited longer than the protocol allows.</p>
+        <p className="mt-3 text-muted">
+          Decision owed goes to the physicians as soon as a passed trial has waited longer than the protocol allows.
+        </p>
       ) : null}
     </>
   )

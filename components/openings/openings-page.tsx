@@ -10,7 +10,10 @@ export function OpeningsPage({ list }: { list: OpeningListDto }) {
   const time = (ms: number) => formatTime(ms, unit.timeZone, nowMs)
   return (
     <>
-      <PageHeading title="Opened from outside" below={`${unit.name}. Someone outside the unit can open one patient’s record for 8 hours by giving a reason.`} />
+      <PageHeading
+        title="Opened from outside"
+        below={`${unit.name}. Someone outside the unit can open one patient’s record for 8 hours by giving a reason.`}
+      />
       <DataTable<OpeningDto>
         caption="Records opened from outside the unit"
         isCaptionHidden
@@ -20,13 +23,25 @@ export function OpeningsPage({ list }: { list: OpeningListDto }) {
         columns={[
           { key: 'when', heading: 'Opened', cell: ({ openedAt }) => <span className="figure">{time(openedAt)}</span> },
           { key: 'who', heading: 'By', cell: ({ personName }) => personName },
-          { key: 'patient', heading: 'Patient', cell: ({ familyName, givenName, recordNumber }) => `${familyName}, ${givenName} (${recordNumber})` },
+          {
+            key: 'patient',
+            heading: 'Patient',
+            cell: ({ familyName, givenName, recordNumber }) => `${familyName}, ${givenName} (${recordNumber})`,
+          },
           { key: 'reason', heading: 'Reason given', cell: ({ reason }) => reason },
           {
             key: 'state',
             heading: 'State',
             cell: ({ isOpen, expiresAt }) =>
-              isOpen ? <Tag shape="ring" tone="wait">open until {time(expiresAt)}</Tag> : <Tag shape="tick" tone="muted">closed</Tag>,
+              isOpen ? (
+                <Tag shape="ring" tone="wait">
+                  open until {time(expiresAt)}
+                </Tag>
+              ) : (
+                <Tag shape="tick" tone="muted">
+                  closed
+                </Tag>
+              ),
           },
         ]}
       />

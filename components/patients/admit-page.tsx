@@ -29,8 +29,17 @@ export function AdmitPage({ list }: { list: Omit<PatientListDto, 'patients'> }) 
   const form = useForm({
     resolver: zodResolver(admitPatientSchema),
     defaultValues: {
-      unitId: unit.id, bedId: notAnswered<string>(), observed: wallClock(list.nowMs, unit.timeZone), recordNumber: '', familyName: '', givenName: '',
-      birthDate: null, sex: null, heightCm: null, weightKg: null, confirmedUnlikely: [],
+      unitId: unit.id,
+      bedId: notAnswered<string>(),
+      observed: wallClock(list.nowMs, unit.timeZone),
+      recordNumber: '',
+      familyName: '',
+      givenName: '',
+      birthDate: null,
+      sex: null,
+      heightCm: null,
+      weightKg: null,
+      confirmedUnlikely: [],
     },
   })
   useObservedNow(form, nowMs, unit.timeZone, true)
@@ -43,21 +52,41 @@ export function AdmitPage({ list }: { list: Omit<PatientListDto, 'patients'> }) 
     },
     invalidates: [todayKeys.root, patientKeys.root],
   })
-  const refusal = !mayAdmit ? 'An RT, a nurse or a physician of this unit admits patients.' : freeBeds.length === 0 ? 'No bed of this unit is free. End a stay or move a patient first.' : null
+  const refusal = !mayAdmit
+    ? 'An RT, a nurse or a physician of this unit admits patients.'
+    : freeBeds.length === 0
+      ? 'No bed of this unit is free. End a stay or move a patient first.'
+      : null
   return (
     <>
       <PageHeading title="Admit a patient" below={unit.name} />
       {refusal ? (
-        <Notice tone="wait" title="Not possible now">{refusal}</Notice>
+        <Notice tone="wait" title="Not possible now">
+          {refusal}
+        </Notice>
       ) : (
         <>
           <UnsavedGuard isDirty={form.formState.isDirty} />
           <Form submit={submit} label="Admit a patient" className="flex flex-col gap-6">
-            <SelectField control={form.control} name="bedId" label="Bed" prompt="Choose the bed" options={freeBeds.map(({ id, label }) => ({ value: id, label }))} />
+            <SelectField
+              control={form.control}
+              name="bedId"
+              label="Bed"
+              prompt="Choose the bed"
+              options={freeBeds.map(({ id, label }) => ({ value: id, label }))}
+            />
             <IdentityFields form={form} today={wallClock(nowMs, unit.timeZone).day} />
-            <ObservedField control={form.control} name="observed" label="In this bed since" timeZone={unit.timeZone} nowMs={nowMs} />
+            <ObservedField
+              control={form.control}
+              name="observed"
+              label="In this bed since"
+              timeZone={unit.timeZone}
+              nowMs={nowMs}
+            />
             <FormErrorSummary control={form.control} submit={submit} />
-            <div><SubmitButton isSending={submit.isSending}>Admit</SubmitButton></div>
+            <div>
+              <SubmitButton isSending={submit.isSending}>Admit</SubmitButton>
+            </div>
           </Form>
         </>
       )}

@@ -27,22 +27,46 @@ import { AIRWAY_WORDS, EPISODE_START_WORDS } from '@/lib/weaning/words'
 
 /** The airway that goes with a way of starting; null where either is possible and somebody has to say. */
 const AIRWAY_OF_START: Record<EpisodeStart, Airway | null> = {
-  intubated: 'endotracheal_tube', reintubated: 'endotracheal_tube', ventilator_on: 'tracheostomy', arrived_intubated: null,
+  intubated: 'endotracheal_tube',
+  reintubated: 'endotracheal_tube',
+  ventilator_on: 'tracheostomy',
+  arrived_intubated: null,
 }
 
-export type BeginPageDto = Pick<PatientPageDto, 'patient' | 'unit' | 'stay' | 'episode' | 'predictedBodyWeightKg' | 'may' | 'nowMs'>
+export type BeginPageDto = Pick<
+  PatientPageDto,
+  'patient' | 'unit' | 'stay' | 'episode' | 'predictedBodyWeightKg' | 'may' | 'nowMs'
+>
 
 /** The beginning of an episode of ventilation: how, through which airway, when. */
 export function BeginPage({ page }: { page: BeginPageDto }) {
   const { patient, unit, stay, episode } = page
   const isVentilated = episode !== null && episode.endedAt === null
   const weight = page.predictedBodyWeightKg
-  const line = { ...patient, patientId: patient.id, bedLabel: stay.bedLabel, predictedBodyWeightKg: weight.known ? weight.value : null, ventilatorDayNumber: null }
-  const refusal = isVentilated ? 'Ventilation is running for this patient already.' : stay.endedAt !== null ? 'This patient is in no bed now. Admit the patient first.' : page.may['episode.begin'] ? null : 'An RT, a nurse or a physician of this unit records this.'
+  const line = {
+    ...patient,
+    patientId: patient.id,
+    bedLabel: stay.bedLabel,
+    predictedBodyWeightKg: weight.known ? weight.value : null,
+    ventilatorDayNumber: null,
+  }
+  const refusal = isVentilated
+    ? 'Ventilation is running for this patient already.'
+    : stay.endedAt !== null
+      ? 'This patient is in no bed now. Admit the patient first.'
+      : page.may['episode.begin']
+        ? null
+        : 'An RT, a nurse or a physician of this unit records this.'
   return (
     <>
       <PageHeading title="Begin ventilation" above={<PatientLine patient={line} />} />
-      {refusal ? <Notice tone="wait" title="Not possible now">{refusal}</Notice> : <BeginForm patientId={patient.id} timeZone={unit.timeZone} openedAtMs={page.nowMs} />}
+      {refusal ? (
+        <Notice tone="wait" title="Not possible now">
+          {refusal}
+        </Notice>
+      ) : (
+        <BeginForm patientId={patient.id} timeZone={unit.timeZone} openedAtMs={page.nowMs} />
+      )}
     </>
   )
 }
@@ -52,7 +76,12 @@ function BeginForm({ patientId, timeZone, openedAtMs }: { patientId: string; tim
   const nowMs = useServerNow(openedAtMs)
   const form = useForm({
     resolver: zodResolver(beginEpisodeSchema),
-    defaultValues: { patientId, observed: wallClock(openedAtMs, timeZone), start: notAnswered<EpisodeStart>(), airway: notAnswered<Airway>() },
+    defaultValues: {
+      patientId,
+      observed: wallClock(openedAtMs, timeZone),
+      start: notAnswered<EpisodeStart>(),
+      airway: notAnswered<Airway>(),
+    },
   })
   useObservedNow(form, nowMs, timeZone, true)
   const start = useWatch({ control: form.control, name: 'start' })
@@ -76,13 +105,24 @@ function BeginForm({ patientId, timeZone, openedAtMs }: { patientId: string; tim
           options={EPISODE_STARTS.map((value) => ({ value, label: sentenceCase(EPISODE_START_WORDS[value]) }))}
           onChosen={(value) => {
             const airway = EPISODE_STARTS.find((each) => each === value)
-            if (airway) form.setValue('airway', AIRWAY_OF_START[airway] ?? notAnswered<Airway>(), { shouldValidate: form.formState.isSubmitted && AIRWAY_OF_START[airway] !== null })
+            if (airway)
+              form.setValue('airway', AIRWAY_OF_START[airway] ?? notAnswered<Airway>(), {
+                shouldValidate: form.formState.isSubmitted && AIRWAY_OF_START[airway] !== null,
+              })
           }}
         />
-        <ChoiceField control={form.control} name="airway" label="Airway" hint={start === 'ventilator_on' ? 'Taken up again through the tracheostomy.' : undefined} options={AIRWAYS.map((value) => ({ value, label: sentenceCase(AIRWAY_WORDS[value]) }))} />
+        <ChoiceField
+          control={form.control}
+          name="airway"
+          label="Airway"
+          hint={start === 'ventilator_on' ? 'Taken up again through the tracheostomy.' : undefined}
+          options={AIRWAYS.map((value) => ({ value, label: sentenceCase(AIRWAY_WORDS[value]) }))}
+        />
         <ObservedField control={form.control} name="observed" label="Ventilated here since" timeZone={timeZone} nowMs={nowMs} />
         <FormErrorSummary control={form.control} submit={submit} />
-        <div><SubmitButton isSending={submit.isSending}>Begin ventilation</SubmitButton></div>
+        <div>
+          <SubmitButton isSending={submit.isSending}>Begin ventilation</SubmitButton>
+        </div>
       </Form>
     </>
   )

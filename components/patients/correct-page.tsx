@@ -21,7 +21,18 @@ export function CorrectPatientPage({ page }: { page: Pick<PatientPageDto, 'patie
   const { patient } = page
   const router = useRouter()
   const { id: patientId, version, recordNumber, familyName, givenName, birthDate, sex, heightCm, weightKg, unlikely } = patient
-  const values: CorrectPatientInput = { patientId, version, recordNumber, familyName, givenName, birthDate, sex, heightCm, weightKg, confirmedUnlikely: unlikely }
+  const values: CorrectPatientInput = {
+    patientId,
+    version,
+    recordNumber,
+    familyName,
+    givenName,
+    birthDate,
+    sex,
+    heightCm,
+    weightKg,
+    confirmedUnlikely: unlikely,
+  }
   const form = useForm({ resolver: zodResolver(correctPatientSchema), defaultValues: values })
   const submit = useSubmit({
     form,
@@ -36,7 +47,11 @@ export function CorrectPatientPage({ page }: { page: Pick<PatientPageDto, 'patie
     <>
       <PageHeading
         title="Correct who this is"
-        above={<p><span className="figure text-xl font-semibold text-ink">{page.stay.bedLabel}</span> {familyName}, {givenName}</p>}
+        above={
+          <p>
+            <span className="figure text-xl font-semibold text-ink">{page.stay.bedLabel}</span> {familyName}, {givenName}
+          </p>
+        }
         below="The change and what stood before are kept in the audit log. Screens and trials already recorded are not judged again."
       />
       {page.may['patient.correct'] === true ? (
@@ -45,11 +60,15 @@ export function CorrectPatientPage({ page }: { page: Pick<PatientPageDto, 'patie
           <Form submit={submit} label="Correct who this is" className="flex flex-col gap-6">
             <IdentityFields form={form} today={page.today} />
             <FormErrorSummary control={form.control} submit={submit} />
-            <div><SubmitButton isSending={submit.isSending}>Record the correction</SubmitButton></div>
+            <div>
+              <SubmitButton isSending={submit.isSending}>Record the correction</SubmitButton>
+            </div>
           </Form>
         </>
       ) : (
-        <Notice tone="wait" title="To read only">An RT, a nurse or a physician of this unit corrects this.</Notice>
+        <Notice tone="wait" title="To read only">
+          An RT, a nurse or a physician of this unit corrects this.
+        </Notice>
       )}
     </>
   )

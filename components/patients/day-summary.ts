@@ -1,7 +1,15 @@
 import { sentenceCase } from '@/lib/weaning/sentence-case'
 import type { PatientDayDto, RecordedDto } from '@/lib/schemas/patient-page'
 import {
-  CRITERION_WORDS, DECISION_WORDS, EXCUSE_WORDS, HOLD_OUTCOME_WORDS, HOLD_SAFETY_WORDS, HOLD_START_WORDS, NOT_TODAY_WORDS, SCREEN_RESULT_WORDS, TRIAL_OUTCOME_WORDS,
+  CRITERION_WORDS,
+  DECISION_WORDS,
+  EXCUSE_WORDS,
+  HOLD_OUTCOME_WORDS,
+  HOLD_SAFETY_WORDS,
+  HOLD_START_WORDS,
+  NOT_TODAY_WORDS,
+  SCREEN_RESULT_WORDS,
+  TRIAL_OUTCOME_WORDS,
 } from '@/lib/weaning/words'
 import { HOLD_SAFETY_ITEMS } from '@/lib/weaning/vocabulary'
 
@@ -26,8 +34,12 @@ function screenWords(entries: readonly RecordedDto[]): string {
   const screen = entries.find((one) => one.kind === 'screen')?.entry
   if (!screen) return 'Not recorded'
   const open = screen.result === 'not_ready' ? 'not_met' : 'not_assessed'
-  const criteria = screen.verdict?.criteria.filter(({ mark }) => mark === open).map(({ criterion }) => CRITERION_WORDS[criterion]) ?? []
-  return sentenceCase(SCREEN_RESULT_WORDS[screen.result]) + because(screen.excuse ? [EXCUSE_WORDS[screen.excuse]] : screen.result === 'ready' ? [] : criteria)
+  const criteria =
+    screen.verdict?.criteria.filter(({ mark }) => mark === open).map(({ criterion }) => CRITERION_WORDS[criterion]) ?? []
+  return (
+    sentenceCase(SCREEN_RESULT_WORDS[screen.result]) +
+    because(screen.excuse ? [EXCUSE_WORDS[screen.excuse]] : screen.result === 'ready' ? [] : criteria)
+  )
 }
 
 function holdWords(entries: readonly RecordedDto[], ends: readonly RecordedDto[]): string {
@@ -37,7 +49,10 @@ function holdWords(entries: readonly RecordedDto[], ends: readonly RecordedDto[]
   if (hold.start !== 'started') return sentenceCase(HOLD_START_WORDS[hold.start]) + because(unsafe)
   const end = ends.find((one) => one.kind === 'hold_end' && one.entry.holdId === hold.entryId)
   if (end?.kind !== 'hold_end') return 'Running'
-  return sentenceCase(HOLD_OUTCOME_WORDS[end.entry.outcome]) + because(end.entry.outcome === 'tolerated' ? [] : [...end.entry.rulesMetWords, ...(end.entry.note ? [end.entry.note] : [])])
+  return (
+    sentenceCase(HOLD_OUTCOME_WORDS[end.entry.outcome]) +
+    because(end.entry.outcome === 'tolerated' ? [] : [...end.entry.rulesMetWords, ...(end.entry.note ? [end.entry.note] : [])])
+  )
 }
 
 function trialWords(entries: readonly RecordedDto[], ends: readonly RecordedDto[]): string {
@@ -45,7 +60,10 @@ function trialWords(entries: readonly RecordedDto[], ends: readonly RecordedDto[
   if (!trial) return 'Not recorded'
   const end = ends.find((one) => one.kind === 'trial_end' && one.entry.trialId === trial.entryId)
   if (end?.kind !== 'trial_end') return 'Running'
-  return sentenceCase(TRIAL_OUTCOME_WORDS[end.entry.outcome]) + because(end.entry.outcome === 'passed' ? [] : [...end.entry.rulesMetWords, ...(end.entry.reason ? [end.entry.reason] : [])])
+  return (
+    sentenceCase(TRIAL_OUTCOME_WORDS[end.entry.outcome]) +
+    because(end.entry.outcome === 'passed' ? [] : [...end.entry.rulesMetWords, ...(end.entry.reason ? [end.entry.reason] : [])])
+  )
 }
 
 function decisionWords(entries: readonly RecordedDto[]): string {

@@ -18,8 +18,17 @@ export function EntryItem({ recorded, episodeId, timeZone, nowMs }: Props) {
     <li className="grid gap-x-5 gap-y-1 border-t border-line py-3 tablet:grid-cols-[5.5rem_minmax(0,1fr)_auto]">
       <p className="figure text-lg font-semibold">{at}</p>
       <div className={cn('min-w-0', isWithdrawn && 'line-through')}>
-        <p><Tag shape={words.shape} tone={words.tone}>{words.title}</Tag>{isWithdrawn ? ' (withdrawn)' : ''}</p>
-        {words.lines.map((line) => <p key={line} className="max-w-reading">{line}</p>)}
+        <p>
+          <Tag shape={words.shape} tone={words.tone}>
+            {words.title}
+          </Tag>
+          {isWithdrawn ? ' (withdrawn)' : ''}
+        </p>
+        {words.lines.map((line) => (
+          <p key={line} className="max-w-reading">
+            {line}
+          </p>
+        ))}
         <EntryMeta entry={entry} timeZone={timeZone} nowMs={nowMs} />
         {earlier.length > 0 ? (
           <details>
@@ -31,8 +40,12 @@ export function EntryItem({ recorded, episodeId, timeZone, nowMs }: Props) {
                 const before = describeEntry(kind, version)
                 return (
                   <li key={version.id} className="py-2">
-                    <p><span className="figure">{clockTime(version.observedAt, timeZone, nowMs)}</span> {before.title}</p>
-                    {before.lines.map((line) => <p key={line}>{line}</p>)}
+                    <p>
+                      <span className="figure">{clockTime(version.observedAt, timeZone, nowMs)}</span> {before.title}
+                    </p>
+                    {before.lines.map((line) => (
+                      <p key={line}>{line}</p>
+                    ))}
                     <EntryMeta entry={version} timeZone={timeZone} nowMs={nowMs} />
                   </li>
                 )
@@ -42,7 +55,11 @@ export function EntryItem({ recorded, episodeId, timeZone, nowMs }: Props) {
         ) : null}
       </div>
       {mayAmend ? (
-        <Link href={amendHref(episodeId, kind, entry.id)} className="inline-flex min-h-[44px] items-center" aria-label={`Correct ${words.title.toLowerCase()}, ${at}`}>
+        <Link
+          href={amendHref(episodeId, kind, entry.id)}
+          className="inline-flex min-h-[44px] items-center"
+          aria-label={`Correct ${words.title.toLowerCase()}, ${at}`}
+        >
           Correct
         </Link>
       ) : null}

@@ -11,16 +11,24 @@ export function EpisodeList({ page, nowMs }: { page: PatientPageDto; nowMs: numb
   if (all.length === 0) return null
   return (
     <section aria-labelledby="episodes">
-      <h2 id="episodes" className="mb-2 text-xl font-bold">Episodes of ventilation</h2>
+      <h2 id="episodes" className="mb-2 text-xl font-bold">
+        Episodes of ventilation
+      </h2>
       <ul>
         {all.map((episode) => (
           <li key={episode.id} className="border-t border-line py-2.5">
             <p>
               {clockTime(episode.startedAt, timeZone, nowMs)} {EPISODE_START_WORDS[episode.start]}, {AIRWAY_WORDS[episode.airway]}
               {episode.endedAt === null || episode.end === null ? (
-                <> <Mark shape="dot" className="text-dawn" /> running, {formatDuration(nowMs - episode.startedAt)}</>
+                <>
+                  {' '}
+                  <Mark shape="dot" className="text-dawn" /> running, {formatDuration(nowMs - episode.startedAt)}
+                </>
               ) : (
-                <>; {clockTime(episode.endedAt, timeZone, nowMs)} {EPISODE_END_WORDS[episode.end]}, after {formatDuration(episode.endedAt - episode.startedAt)}</>
+                <>
+                  ; {clockTime(episode.endedAt, timeZone, nowMs)} {EPISODE_END_WORDS[episode.end]}, after{' '}
+                  {formatDuration(episode.endedAt - episode.startedAt)}
+                </>
               )}
             </p>
           </li>

@@ -23,12 +23,26 @@ export function OpenRecordPage() {
   })
   return (
     <>
-      <PageHeading title="Open a record of another unit" below={`To read, for ${OPENING_HOURS} h. The reason you give and each reading stand in the audit log, and the unit’s lead is told.`} />
+      <PageHeading
+        title="Open a record of another unit"
+        below={`To read, for ${OPENING_HOURS} h. The reason you give and each reading stand in the audit log, and the unit’s lead is told.`}
+      />
       <Form submit={submit} label="Open a record of another unit" className="flex flex-col gap-6">
         <TextField control={form.control} name="recordNumber" label="Record number" width={18} maxLength={40} />
-        <TextareaField control={form.control} name="reason" label="Why you open it" rows={3} maxLength={500} hint="At least 10 characters. The unit lead reads it." />
+        <TextareaField
+          control={form.control}
+          name="reason"
+          label="Why you open it"
+          rows={3}
+          maxLength={500}
+          hint="At least 10 characters. The unit lead reads it."
+        />
         <FormErrorSummary control={form.control} submit={submit} />
-        <div><SubmitButton isSending={submit.isSending} sendingLabel="Opening…">Open the record</SubmitButton></div>
+        <div>
+          <SubmitButton isSending={submit.isSending} sendingLabel="Opening…">
+            Open the record
+          </SubmitButton>
+        </div>
       </Form>
     </>
   )

@@ -17,7 +17,11 @@ export function PatientActions({ page }: { page: PatientPageDto }) {
         may['airway.record'] ? { href: at('airway'), label: 'Airway event' } : null,
         may['episode.end'] ? { href: at('end'), label: 'End ventilation' } : null,
       ]
-    : [may['episode.begin'] && stay.endedAt === null ? { href: `/patients/${patient.id}/begin`, label: 'Begin ventilation' } : null]
+    : [
+        may['episode.begin'] && stay.endedAt === null
+          ? { href: `/patients/${patient.id}/begin`, label: 'Begin ventilation' }
+          : null,
+      ]
   const others = [
     stay.endedAt === null && may['stay.move'] ? { href: `/patients/${patient.id}/move`, label: 'Move or leave' } : null,
     may['patient.correct'] ? { href: `/patients/${patient.id}/correct`, label: 'Correct who this is' } : null,
@@ -26,7 +30,11 @@ export function PatientActions({ page }: { page: PatientPageDto }) {
   if (all.length === 0) return null
   return (
     <nav aria-label="Record for this patient" className="no-print flex flex-wrap gap-2">
-      {all.map(({ href, label }) => <ButtonLink key={href} href={href} prefetch={false}>{label}</ButtonLink>)}
+      {all.map(({ href, label }) => (
+        <ButtonLink key={href} href={href} prefetch={false}>
+          {label}
+        </ButtonLink>
+      ))}
     </nav>
   )
 }

@@ -35,15 +35,25 @@ export function ApproveForm({ unitId, draft, day }: ApproveFormProps) {
         <legend className="mb-1.5 font-semibold">In force</legend>
         {[false, true].map((later) => (
           <label key={String(later)} className="flex min-h-[44px] cursor-pointer items-center gap-3">
-            <input type="radio" name="in-force" className="size-5 accent-current" checked={isLater === later} onChange={() => choose(later)} />
+            <input
+              type="radio"
+              name="in-force"
+              className="size-5 accent-current"
+              checked={isLater === later}
+              onChange={() => choose(later)}
+            />
             {later ? 'from the start of a later day' : 'from the moment of approval'}
           </label>
         ))}
       </fieldset>
       {isLater ? <DateField control={form.control} name="startDay" label="First day" min={day} /> : null}
       <TextareaField control={form.control} name="note" label="Note (may stay empty)" />
-      <p className="text-muted">By approving you put these limits in force for every patient of the unit. What was recorded before keeps its verdict.</p>
-      <SubmitButton isSending={submit.isSending} sendingLabel="Approving…">Approve version {draft.number}</SubmitButton>
+      <p className="text-muted">
+        By approving you put these limits in force for every patient of the unit. What was recorded before keeps its verdict.
+      </p>
+      <SubmitButton isSending={submit.isSending} sendingLabel="Approving…">
+        Approve version {draft.number}
+      </SubmitButton>
     </Form>
   )
 }

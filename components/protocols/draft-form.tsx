@@ -24,7 +24,12 @@ import { NumberListField } from './number-list-field'
 const useDraft = ({ unit, current, draft }: ProtocolPageDto) =>
   useForm({
     resolver: zodResolver(saveDraftSchema),
-    defaultValues: { unitId: unit.id, version: draft?.version ?? null, content: (draft ?? current).content, note: draft?.note ?? '' },
+    defaultValues: {
+      unitId: unit.id,
+      version: draft?.version ?? null,
+      content: (draft ?? current).content,
+      note: draft?.note ?? '',
+    },
   })
 export type DraftForm = ReturnType<typeof useDraft>
 
@@ -51,9 +56,16 @@ export function DraftForm({ page }: { page: ProtocolPageDto }) {
         <MinuteOfDayField control={control} name="content.screeningWindow.opensMin" label="Opens" />
         <MinuteOfDayField control={control} name="content.screeningWindow.closesMin" label="Closes" />
       </Part>
-      <Part title="Criteria of the daily screen" isWide><DraftScreen form={form} /></Part>
+      <Part title="Criteria of the daily screen" isWide>
+        <DraftScreen form={form} />
+      </Part>
       <Part title="Sedation hold" isWide>
-        <CheckListField control={control} name="content.hold.safetyItems" label="Not started when any of these is present" options={SAFETY_OPTIONS} />
+        <CheckListField
+          control={control}
+          name="content.hold.safetyItems"
+          label="Not started when any of these is present"
+          options={SAFETY_OPTIONS}
+        />
         <div className="flex flex-wrap gap-6">
           <NumberField control={control} name="content.hold.startWithinMin" label="Due after a ready screen" unit="min" isWhole />
           <NumberField control={control} name="content.hold.observeEveryMin" label="Observed every" unit="min" isWhole />
@@ -64,25 +76,56 @@ export function DraftForm({ page }: { page: ProtocolPageDto }) {
       </Part>
       <Part title="Breathing trial" isWide>
         <div className="flex flex-wrap gap-6">
-          <NumberField control={control} name="content.pairingWindowMin" label="Pairing window, from the start of the hold" unit="min" isWhole />
+          <NumberField
+            control={control}
+            name="content.pairingWindowMin"
+            label="Pairing window, from the start of the hold"
+            unit="min"
+            isWhole
+          />
           <NumberField control={control} name="content.trial.startWithinMin" label="Due after the hold" unit="min" isWhole />
           <NumberField control={control} name="content.trial.defaultDurationMin" label="Usual length" unit="min" isWhole />
           <NumberField control={control} name="content.trial.shortestMin" label="Shortest" unit="min" isWhole />
           <NumberField control={control} name="content.trial.longestMin" label="Longest" unit="min" isWhole />
-          <NumberField control={control} name="content.trial.retryWithinMin" label="Due again after a stopped trial" unit="min" isWhole />
+          <NumberField
+            control={control}
+            name="content.trial.retryWithinMin"
+            label="Due again after a stopped trial"
+            unit="min"
+            isWhole
+          />
         </div>
-        <NumberListField control={control} name="content.trial.observationMinutes" label="Observed at minute" hint="In rising order, with commas between." />
+        <NumberListField
+          control={control}
+          name="content.trial.observationMinutes"
+          label="Observed at minute"
+          hint="In rising order, with commas between."
+        />
         <DraftStopRules form={form} name="content.trial.stopRules" label="Rules that stop a trial" />
       </Part>
       <Part title="Decision and watch">
-        <NumberField control={control} name="content.decision.answerWithinMin" label="Answer to a passed trial within" unit="min" isWhole />
-        <NumberField control={control} name="content.decision.extubateWithinMin" label="Signed extubation carried out within" unit="min" isWhole />
+        <NumberField
+          control={control}
+          name="content.decision.answerWithinMin"
+          label="Answer to a passed trial within"
+          unit="min"
+          isWhole
+        />
+        <NumberField
+          control={control}
+          name="content.decision.extubateWithinMin"
+          label="Signed extubation carried out within"
+          unit="min"
+          isWhole
+        />
         <NumberListField control={control} name="content.watch.hours" label="Watch after extubation, hours" />
       </Part>
       <TextareaField control={control} name="note" label="What changes, and why" />
       <FormErrorSummary control={control} submit={submit} />
       <div className="flex flex-wrap items-center gap-4">
-        <SubmitButton isSending={submit.isSending} sendingLabel="Saving…">Save the draft</SubmitButton>
+        <SubmitButton isSending={submit.isSending} sendingLabel="Saving…">
+          Save the draft
+        </SubmitButton>
         <p className="text-muted">A draft changes nothing until a physician approves it.</p>
       </div>
     </Form>

@@ -13,7 +13,10 @@ import { CRITERION_TEMPLATES, FIXED_CRITERIA } from './criterion-templates'
 import type { DraftForm } from './draft-form'
 
 export const COMPARATOR_OPTIONS = [
-  { value: 'atMost', label: 'at most' }, { value: 'below', label: 'below' }, { value: 'atLeast', label: 'at least' }, { value: 'above', label: 'above' },
+  { value: 'atMost', label: 'at most' },
+  { value: 'below', label: 'below' },
+  { value: 'atLeast', label: 'at least' },
+  { value: 'above', label: 'above' },
 ]
 
 /** The criteria of the screen: each can be switched on with its limit and the source of it. */
@@ -36,9 +39,13 @@ export function DraftScreen({ form }: { form: DraftForm }) {
             {FIXED_CRITERIA.includes(template.criterion) ? (
               <p className="font-semibold">{label}, always on</p>
             ) : (
-              <div><Toggle label={label} isOn={index !== -1} onToggle={(isOn) => switchTo(template, isOn)} /></div>
+              <div>
+                <Toggle label={label} isOn={index !== -1} onToggle={(isOn) => switchTo(template, isOn)} />
+              </div>
             )}
-            {index === -1 ? null : <RuleFields key={rules.fields[index]?.id} form={form} index={index} rule={template} label={label} />}
+            {index === -1 ? null : (
+              <RuleFields key={rules.fields[index]?.id} form={form} index={index} rule={template} label={label} />
+            )}
           </li>
         )
       })}
@@ -56,11 +63,26 @@ function RuleFields({ form, index, rule, label }: RuleFieldsProps) {
     <div className="flex flex-wrap items-start gap-x-6 gap-y-3 pl-2">
       {limits.map((_, place) => (
         <div key={place} className="flex gap-3">
-          <SelectField control={control} name={`${path}.limits.${place}.comparator`} label={`${label}: kind of limit`} options={COMPARATOR_OPTIONS} />
-          <NumberField control={control} name={`${path}.limits.${place}.value`} label={`${label}: limit`} unit={CRITERION_UNITS[rule.criterion]} isSigned={rule.criterion === 'rass'} />
+          <SelectField
+            control={control}
+            name={`${path}.limits.${place}.comparator`}
+            label={`${label}: kind of limit`}
+            options={COMPARATOR_OPTIONS}
+          />
+          <NumberField
+            control={control}
+            name={`${path}.limits.${place}.value`}
+            label={`${label}: limit`}
+            unit={CRITERION_UNITS[rule.criterion]}
+            isSigned={rule.criterion === 'rass'}
+          />
         </div>
       ))}
-      {rule.kind === 'yesNo' ? <p className="min-h-[44px] pt-2">Must be: <span className="font-semibold">{describeLimit(rule)}</span></p> : null}
+      {rule.kind === 'yesNo' ? (
+        <p className="min-h-[44px] pt-2">
+          Must be: <span className="font-semibold">{describeLimit(rule)}</span>
+        </p>
+      ) : null}
       {rule.kind === 'word' ? (
         <CheckListField
           control={control}

@@ -20,7 +20,9 @@ type ListName = 'content.trial.stopRules' | 'content.hold.failRules'
 /** The published lists that a unit can take further rules from. A hold has no baseline, so no change from it. */
 const PUBLISHED: Record<ListName, StopRule[]> = {
   'content.trial.stopRules': [...stopGirard2008.rules, ...stopBoles2007.rules].map(({ rule }) => rule),
-  'content.hold.failRules': [...holdFailGirard2008.rules, ...stopBoles2007.rules].map(({ rule }) => rule).filter(({ kind }) => kind !== 'change'),
+  'content.hold.failRules': [...holdFailGirard2008.rules, ...stopBoles2007.rules]
+    .map(({ rule }) => rule)
+    .filter(({ kind }) => kind !== 'change'),
 }
 
 /** Rules that stop a trial or end a hold: limits and times can be set, rules taken out, and rules of published lists added. */
@@ -28,7 +30,9 @@ export function DraftStopRules({ form, name, label }: { form: DraftForm; name: L
   const rules = useFieldArray({ control: form.control, name, keyName: 'key' })
   const [chosen, setChosen] = useState('')
   const held = new Set(rules.fields.map(({ id }) => id))
-  const further = PUBLISHED[name].filter(({ id }, index, all) => !held.has(id) && all.findIndex((rule) => rule.id === id) === index)
+  const further = PUBLISHED[name].filter(
+    ({ id }, index, all) => !held.has(id) && all.findIndex((rule) => rule.id === id) === index,
+  )
   const add = () => {
     const rule = further.find(({ id }) => id === chosen)
     if (rule) rules.append(rule)
@@ -52,7 +56,11 @@ export function DraftStopRules({ form, name, label }: { form: DraftForm; name: L
           <span>Add a published rule</span>
           <select className={`${CONTROL_LOOK} max-w-full`} value={chosen} onChange={(event) => setChosen(event.target.value)}>
             <option value="">Choose</option>
-            {further.map((rule) => <option key={rule.id} value={rule.id}>{sentenceCase(describeRule(rule))}</option>)}
+            {further.map((rule) => (
+              <option key={rule.id} value={rule.id}>
+                {sentenceCase(describeRule(rule))}
+              </option>
+            ))}
           </select>
         </label>
         <Button onClick={add}>Add</Button>
@@ -68,9 +76,20 @@ function RuleFields({ form, path, rule }: { form: DraftForm; path: `${ListName}.
     <div className="flex min-w-0 flex-col gap-3">
       <p className="font-semibold">{words}</p>
       <div className="flex flex-wrap gap-4">
-        {rule.kind === 'limit' ? <NumberField control={control} name={`${path}.limit.value`} label="Limit" unit={OBSERVED_UNITS[rule.reading]} /> : null}
-        {rule.kind === 'change' ? <NumberField control={control} name={`${path}.by`} label="Change" unit={rule.as === 'percent' ? '%' : OBSERVED_UNITS[rule.reading]} /> : null}
-        {rule.kind === 'limit' || rule.kind === 'change' ? <NumberField control={control} name={`${path}.sustainedMin`} label="For at least" unit="min" isWhole /> : null}
+        {rule.kind === 'limit' ? (
+          <NumberField control={control} name={`${path}.limit.value`} label="Limit" unit={OBSERVED_UNITS[rule.reading]} />
+        ) : null}
+        {rule.kind === 'change' ? (
+          <NumberField
+            control={control}
+            name={`${path}.by`}
+            label="Change"
+            unit={rule.as === 'percent' ? '%' : OBSERVED_UNITS[rule.reading]}
+          />
+        ) : null}
+        {rule.kind === 'limit' || rule.kind === 'change' ? (
+          <NumberField control={control} name={`${path}.sustainedMin`} label="For at least" unit="min" isWhole />
+        ) : null}
         {rule.kind === 'signs' ? <NumberField control={control} name={`${path}.atLeast`} label="Signs together" isWhole /> : null}
         <TextField control={control} name={`${path}.source`} label="Source" width={44} />
       </div>

@@ -13,7 +13,14 @@ export function NumberListField<Values extends FieldValues, Context, Output>(pro
   const { ids, path, value, register, change, blur } = useField({ control, name })
   const { errors } = useFormState({ control, name })
   const [typed, setTyped] = useState(() => (Array.isArray(value) ? value.join(', ') : ''))
-  const error = firstMessage(name.split('.').reduce<unknown>((at, step) => (typeof at === 'object' && at !== null ? (at as Record<string, unknown>)[step] : undefined), errors))
+  const error = firstMessage(
+    name
+      .split('.')
+      .reduce<unknown>(
+        (at, step) => (typeof at === 'object' && at !== null ? (at as Record<string, unknown>)[step] : undefined),
+        errors,
+      ),
+  )
   return (
     <FieldFrame ids={ids} label={label} hint={hint} error={error} className={className}>
       <input
@@ -27,7 +34,12 @@ export function NumberListField<Values extends FieldValues, Context, Output>(pro
         className={cn(CONTROL_LOOK, 'figure w-[40ch] max-w-full')}
         onChange={(event) => {
           setTyped(event.target.value)
-          change(event.target.value.split(/[\s,;]+/).filter((part) => part !== '').map((part) => parseNumber(part).value ?? NaN))
+          change(
+            event.target.value
+              .split(/[\s,;]+/)
+              .filter((part) => part !== '')
+              .map((part) => parseNumber(part).value ?? NaN),
+          )
         }}
         onBlur={blur}
       />
@@ -39,5 +51,7 @@ export function NumberListField<Values extends FieldValues, Context, Output>(pro
 function firstMessage(error: unknown): string | undefined {
   if (typeof error !== 'object' || error === null) return undefined
   if ('message' in error && typeof error.message === 'string' && error.message !== '') return error.message
-  return Object.values(error).map(firstMessage).find((message) => message !== undefined)
+  return Object.values(error)
+    .map(firstMessage)
+    .find((message) => message !== undefined)
 }

@@ -39,29 +39,39 @@ export function CriteriaList(props: CriteriaListProps) {
   const rsbiRule = rules.find((rule) => rule.criterion === 'rsbi')
   return (
     <div className="border-b-2 border-ink">
-      {rules.filter((rule) => rule.criterion !== 'rsbi').map((rule) => {
-        const names = readingsOf(rule.criterion)
-        const open = names.filter((name) => name in carried)
-        const judged = verdict.criteria.find((each) => each.criterion === rule.criterion)
-        return (
-          <CriterionLine
-            key={rule.criterion}
-            label={sentenceCase(CRITERION_WORDS[rule.criterion])}
-            limit={<LimitWords rule={rule} counted={judged?.value ?? null} />}
-            source={rule.source}
-            mark={judged?.mark ?? null}
-            markNote={judged?.unknownBecause && judged.unknownBecause !== 'missing' ? UNKNOWN_WORDS[judged.unknownBecause] : undefined}
-            onKeyDown={(event) => {
-              if (event.key === 'Enter' && event.target instanceof HTMLInputElement) confirm(open)
-            }}
-          >
-            <div className="flex flex-wrap items-center gap-x-3 gap-y-2">
-              <CriterionField form={form} criterion={rule.criterion} onTyped={() => confirm(open)} />
-              <CarriedValues observedAt={open.map((name) => carried[name])} onConfirm={() => confirm(open)} label={CRITERION_WORDS[rule.criterion]} timeZone={timeZone} nowMs={nowMs} />
-            </div>
-          </CriterionLine>
-        )
-      })}
+      {rules
+        .filter((rule) => rule.criterion !== 'rsbi')
+        .map((rule) => {
+          const names = readingsOf(rule.criterion)
+          const open = names.filter((name) => name in carried)
+          const judged = verdict.criteria.find((each) => each.criterion === rule.criterion)
+          return (
+            <CriterionLine
+              key={rule.criterion}
+              label={sentenceCase(CRITERION_WORDS[rule.criterion])}
+              limit={<LimitWords rule={rule} counted={judged?.value ?? null} />}
+              source={rule.source}
+              mark={judged?.mark ?? null}
+              markNote={
+                judged?.unknownBecause && judged.unknownBecause !== 'missing' ? UNKNOWN_WORDS[judged.unknownBecause] : undefined
+              }
+              onKeyDown={(event) => {
+                if (event.key === 'Enter' && event.target instanceof HTMLInputElement) confirm(open)
+              }}
+            >
+              <div className="flex flex-wrap items-center gap-x-3 gap-y-2">
+                <CriterionField form={form} criterion={rule.criterion} onTyped={() => confirm(open)} />
+                <CarriedValues
+                  observedAt={open.map((name) => carried[name])}
+                  onConfirm={() => confirm(open)}
+                  label={CRITERION_WORDS[rule.criterion]}
+                  timeZone={timeZone}
+                  nowMs={nowMs}
+                />
+              </div>
+            </CriterionLine>
+          )
+        })}
       <RsbiLine {...props} rule={rsbiRule} />
     </div>
   )
@@ -71,7 +81,13 @@ function LimitWords({ rule, counted }: { rule: ScreenRule; counted: number | str
   const isComputed = rule.criterion === 'pfRatio' && rule.kind === 'number' && typeof counted === 'number'
   return (
     <>
-      {isComputed ? <Value value={valueBesideLimit(counted, CRITERION_DECIMALS.pfRatio, rule.limits)} unit={CRITERION_UNITS.pfRatio} className="block" /> : null}
+      {isComputed ? (
+        <Value
+          value={valueBesideLimit(counted, CRITERION_DECIMALS.pfRatio, rule.limits)}
+          unit={CRITERION_UNITS.pfRatio}
+          className="block"
+        />
+      ) : null}
       {describeLimit(rule)}
     </>
   )
@@ -93,12 +109,22 @@ function RsbiLine({ form, rule, verdict, counted, isAdult, carried, confirm, tim
       remark="computed"
       limit={
         <span className="block">
-          <Value value={index.known ? valueBesideLimit(index.value, CRITERION_DECIMALS.rsbi, limits) : null} unit="/min/L" size="large" className="block" />
+          <Value
+            value={index.known ? valueBesideLimit(index.value, CRITERION_DECIMALS.rsbi, limits) : null}
+            unit="/min/L"
+            size="large"
+            className="block"
+          />
           {rule ? describeLimit(rule) : 'no criterion of this unit'}
-          {condition !== null && condition !== 'unsupported_one_minute' && condition !== undefined ? '; reads lower on support than without' : ''}
+          {condition !== null && condition !== 'unsupported_one_minute' && condition !== undefined
+            ? '; reads lower on support than without'
+            : ''}
         </span>
       }
-      source={rule?.source ?? 'Published for one minute without support, on room air: Yang & Tobin 1991, doi:10.1056/NEJM199105233242101'}
+      source={
+        rule?.source ??
+        'Published for one minute without support, on room air: Yang & Tobin 1991, doi:10.1056/NEJM199105233242101'
+      }
       mark={judged?.mark ?? null}
       onKeyDown={(event) => {
         if (event.key === 'Enter' && event.target instanceof HTMLInputElement) onTyped()
@@ -106,10 +132,28 @@ function RsbiLine({ form, rule, verdict, counted, isAdult, carried, confirm, tim
     >
       <div className="flex flex-col gap-2">
         <div className="flex flex-wrap gap-x-3 gap-y-2">
-          <ReadingField form={form} name="readings.breathsPerMin" reading="breathsPerMin" label="Respiratory rate, spontaneous" onTyped={onTyped} />
-          <ReadingField form={form} name="readings.tidalVolumeMl" reading="tidalVolumeMl" label="Tidal volume, spontaneous" onTyped={onTyped} />
+          <ReadingField
+            form={form}
+            name="readings.breathsPerMin"
+            reading="breathsPerMin"
+            label="Respiratory rate, spontaneous"
+            onTyped={onTyped}
+          />
+          <ReadingField
+            form={form}
+            name="readings.tidalVolumeMl"
+            reading="tidalVolumeMl"
+            label="Tidal volume, spontaneous"
+            onTyped={onTyped}
+          />
         </div>
-        <CarriedValues observedAt={open.map((name) => carried[name])} onConfirm={onTyped} label="rate and volume" timeZone={timeZone} nowMs={nowMs} />
+        <CarriedValues
+          observedAt={open.map((name) => carried[name])}
+          onConfirm={onTyped}
+          label="rate and volume"
+          timeZone={timeZone}
+          nowMs={nowMs}
+        />
         <ChoiceField
           control={form.control}
           name="readings.rsbiCondition"

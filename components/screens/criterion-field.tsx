@@ -39,7 +39,16 @@ export function CriterionField({ form, criterion, onTyped }: CriterionFieldProps
         </div>
       )
     case 'yesNo':
-      return <YesNoField control={form.control} name={`readings.${input.name}`} label={label} isLabelHidden clearLabel="not assessed" onChosen={onTyped} />
+      return (
+        <YesNoField
+          control={form.control}
+          name={`readings.${input.name}`}
+          label={label}
+          isLabelHidden
+          clearLabel="not assessed"
+          onChosen={onTyped}
+        />
+      )
     case 'word':
       return (
         <ChoiceField
@@ -49,9 +58,11 @@ export function CriterionField({ form, criterion, onTyped }: CriterionFieldProps
           isLabelHidden
           clearLabel="not assessed"
           onChosen={onTyped}
-          options={input.name === 'cough'
-            ? COUGHS.map((value) => ({ value, label: COUGH_WORDS[value] }))
-            : SECRETIONS.map((value) => ({ value, label: SECRETIONS_WORDS[value] }))}
+          options={
+            input.name === 'cough'
+              ? COUGHS.map((value) => ({ value, label: COUGH_WORDS[value] }))
+              : SECRETIONS.map((value) => ({ value, label: SECRETIONS_WORDS[value] }))
+          }
         />
       )
     case 'rass':

@@ -40,7 +40,9 @@ export function CriterionLine({ label, remark, limit, source, mark, markNote, ch
       </p>
       <div className="order-3 col-span-2 min-w-0 tablet:order-none tablet:col-span-1">{children}</div>
       <div className="order-4 col-span-2 text-muted tablet:order-none tablet:col-span-1">
-        {source === null ? limit : (
+        {source === null ? (
+          limit
+        ) : (
           <details>
             <summary className="flex min-h-[44px] cursor-pointer items-center gap-2 underline decoration-line decoration-2 underline-offset-4">
               <span>{limit}</span>

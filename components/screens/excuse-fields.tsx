@@ -19,7 +19,14 @@ export function ExcuseFields({ control }: { control: Control<ScreenFormInput> })
         layout="stacked"
         options={EXCUSE_REASONS.map((value) => ({ value, label: sentenceCase(EXCUSE_WORDS[value]) }))}
       />
-      <TextareaField control={control} name="note" label="Note" hint="Needed for another reason, a few words are enough." rows={2} maxLength={1000} />
+      <TextareaField
+        control={control}
+        name="note"
+        label="Note"
+        hint="Needed for another reason, a few words are enough."
+        rows={2}
+        maxLength={1000}
+      />
     </div>
   )
 }

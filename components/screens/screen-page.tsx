@@ -39,8 +39,18 @@ export function ScreenPage({ initial, amend }: ScreenPageProps) {
   return (
     <StepPage title="Daily screen" form={data} isStale={isStale}>
       <AdultsOnly isAdult={data.patient.isAdult} patientId={data.patient.patientId} mayCorrect />
-      {isOver ? <Notice tone="info" title="Ventilation has ended">A screen belongs to an episode of ventilation. What was recorded can be corrected from the patient’s page.</Notice> : null}
-      {!isOver && data.patient.isAdult === true ? <Notice tone="wait" title="To read only">{amend === null ? 'An RT or a physician of this unit records the screen.' : 'Only its author or a physician can correct this screen.'}</Notice> : null}
+      {isOver ? (
+        <Notice tone="info" title="Ventilation has ended">
+          A screen belongs to an episode of ventilation. What was recorded can be corrected from the patient’s page.
+        </Notice>
+      ) : null}
+      {!isOver && data.patient.isAdult === true ? (
+        <Notice tone="wait" title="To read only">
+          {amend === null
+            ? 'An RT or a physician of this unit records the screen.'
+            : 'Only its author or a physician can correct this screen.'}
+        </Notice>
+      ) : null}
       <EarlierScreens form={data} />
     </StepPage>
   )
@@ -94,11 +104,25 @@ function ScreenForm({ initial, live, isStale }: { initial: ScreenFormDto; live: 
             <ExcuseFields control={form.control} />
           ) : (
             <>
-              <div className="sticky top-0 z-10 -mx-2 mb-1 flex flex-wrap items-end justify-between gap-x-6 gap-y-2 bg-paper px-2 py-3">
-                {unconfirmed.length > 1 ? <Button onClick={confirmAll}>Confirm all {unconfirmed.length} carried-over values</Button> : <span />}
+              <div className="z-10 -mx-2 tablet:sticky tablet:top-0 mb-1 flex flex-wrap items-end justify-between gap-x-6 gap-y-2 bg-paper px-2 py-3">
+                {unconfirmed.length > 1 ? (
+                  <Button onClick={confirmAll}>Confirm all {unconfirmed.length} carried-over values</Button>
+                ) : (
+                  <span />
+                )}
                 <VerdictPanel verdict={verdict} unconfirmedCount={unconfirmed.length} />
               </div>
-              <CriteriaList form={form} rules={initial.protocol.content.screen} verdict={verdict} counted={counted} carried={carried} confirm={confirm} timeZone={timeZone} nowMs={nowMs} isAdult={initial.patient.isAdult} />
+              <CriteriaList
+                form={form}
+                rules={initial.protocol.content.screen}
+                verdict={verdict}
+                counted={counted}
+                carried={carried}
+                confirm={confirm}
+                timeZone={timeZone}
+                nowMs={nowMs}
+                isAdult={initial.patient.isAdult}
+              />
             </>
           )}
           <div className="mt-5 flex flex-col gap-5">
@@ -107,17 +131,26 @@ function ScreenForm({ initial, live, isStale }: { initial: ScreenFormDto; live: 
               <Notice tone="stop" role="alert" title={`${unconfirmed.length} carried over, not confirmed`}>
                 <p>They count as not assessed until you confirm them.</p>
                 <div className="mt-2 flex flex-wrap gap-3">
-                  <button ref={confirmButton} type="button" className="min-h-[44px] rounded-control border border-ink px-5 font-semibold" onClick={confirmAll}>
+                  <button
+                    ref={confirmButton}
+                    type="button"
+                    className="min-h-[44px] rounded-control border border-ink px-5 font-semibold"
+                    onClick={confirmAll}
+                  >
                     Confirm them all
                   </button>
-                  <Button type="submit" variant="quiet">Record them as not assessed</Button>
+                  <Button type="submit" variant="quiet">
+                    Record them as not assessed
+                  </Button>
                 </div>
               </Notice>
             ) : null}
             <FormErrorSummary control={form.control} submit={submit} />
             <div className="flex flex-wrap gap-3">
               <SubmitButton isSending={submit.isSending}>{submitWords(isExcusing, initial.amending !== null)}</SubmitButton>
-              <Button onClick={() => setExcusing(!isExcusing)}>{isExcusing ? 'Back to the criteria' : 'Excuse from the screen today'}</Button>
+              <Button onClick={() => setExcusing(!isExcusing)}>
+                {isExcusing ? 'Back to the criteria' : 'Excuse from the screen today'}
+              </Button>
             </div>
           </div>
         </Form>
@@ -126,10 +159,14 @@ function ScreenForm({ initial, live, isStale }: { initial: ScreenFormDto; live: 
         failure={submit.failure}
         patientId={patientId}
         what="screen"
-        onRecordAnyway={initial.amending ? undefined : () => {
-          form.setValue('recordAnyway', true)
-          send()
-        }}
+        onRecordAnyway={
+          initial.amending
+            ? undefined
+            : () => {
+                form.setValue('recordAnyway', true)
+                send()
+              }
+        }
       />
       <EarlierScreens form={live} />
     </StepPage>

@@ -3,10 +3,27 @@ import type { PrefillDto } from '@/lib/schemas/step-form'
 import type { ScreenReadings } from '@/lib/weaning/readings'
 
 export const NO_READINGS: ScreenReadings = {
-  fio2Fraction: null, peepCmH2O: null, norepinephrineMcgPerKgMin: null, otherVasopressor: null, ischaemia: null, spo2Percent: null,
-  paO2MmHg: null, paO2FiO2Fraction: null, ph: null, spontaneousEffort: null, cough: null, secretions: null, rass: null, raisedIcp: null,
-  neuromuscularBlockade: null, temperatureC: null, haemoglobinGPerDl: null, causeImproving: null, breathsPerMin: null,
-  tidalVolumeMl: null, rsbiCondition: null,
+  fio2Fraction: null,
+  peepCmH2O: null,
+  norepinephrineMcgPerKgMin: null,
+  otherVasopressor: null,
+  ischaemia: null,
+  spo2Percent: null,
+  paO2MmHg: null,
+  paO2FiO2Fraction: null,
+  ph: null,
+  spontaneousEffort: null,
+  cough: null,
+  secretions: null,
+  rass: null,
+  raisedIcp: null,
+  neuromuscularBlockade: null,
+  temperatureC: null,
+  haemoglobinGPerDl: null,
+  causeImproving: null,
+  breathsPerMin: null,
+  tidalVolumeMl: null,
+  rsbiCondition: null,
 }
 
 /** Which readings are carried over and not yet confirmed, with the time they were observed (UTC ms). */
@@ -23,7 +40,11 @@ export type LeftIncomplete = { observedAt: number; readings: ScreenReadings }
  * later one wins. Rate and volume come from an earlier screen only: measured on full support they say nothing about the RSBI. Nothing carried
  * over counts until it is confirmed.
  */
-export function carryOver(prefill: PrefillDto, left: LeftIncomplete | null, nowMs: number): { readings: ScreenReadings; carried: Carried } {
+export function carryOver(
+  prefill: PrefillDto,
+  left: LeftIncomplete | null,
+  nowMs: number,
+): { readings: ScreenReadings; carried: Carried } {
   const readings = { ...NO_READINGS }
   const carried: Carried = {}
   const offer = (values: Partial<ScreenReadings>, observedAt: number) => {
@@ -35,8 +56,16 @@ export function carryOver(prefill: PrefillDto, left: LeftIncomplete | null, nowM
     }
   }
   const { settings, gas } = prefill
-  if (settings) offer({ fio2Fraction: settings.fio2Fraction, peepCmH2O: settings.peepCmH2O, spo2Percent: settings.spo2Percent }, settings.observedAt)
-  if (gas) offer({ paO2MmHg: gas.paO2MmHg, paO2FiO2Fraction: gas.fio2Fraction, ph: gas.ph, haemoglobinGPerDl: gas.haemoglobinGPerDl }, gas.observedAt)
+  if (settings)
+    offer(
+      { fio2Fraction: settings.fio2Fraction, peepCmH2O: settings.peepCmH2O, spo2Percent: settings.spo2Percent },
+      settings.observedAt,
+    )
+  if (gas)
+    offer(
+      { paO2MmHg: gas.paO2MmHg, paO2FiO2Fraction: gas.fio2Fraction, ph: gas.ph, haemoglobinGPerDl: gas.haemoglobinGPerDl },
+      gas.observedAt,
+    )
   if (left) offer(left.readings, left.observedAt)
   return { readings, carried }
 }
@@ -45,7 +74,11 @@ export function carryOver(prefill: PrefillDto, left: LeftIncomplete | null, nowM
  * The readings that count: what is carried over and not confirmed is not assessed. A number that cannot be read is not assessed either when
  * judging; when the form is checked it is kept, so that the refusal stands at its field.
  */
-export function confirmedReadings(readings: ScreenReadings, carried: Carried, unreadable: 'not assessed' | 'keep unreadable' = 'not assessed'): ScreenReadings {
+export function confirmedReadings(
+  readings: ScreenReadings,
+  carried: Carried,
+  unreadable: 'not assessed' | 'keep unreadable' = 'not assessed',
+): ScreenReadings {
   const entries = Object.entries(readings).map(([name, value]: [string, unknown]) => {
     const isUnread = unreadable === 'not assessed' && typeof value === 'number' && Number.isNaN(value)
     return [name, name in carried || value === undefined || isUnread ? null : value]

@@ -33,7 +33,10 @@ export function useScreenForm(dto: ScreenFormDto) {
   const counted = useMemo(() => confirmedReadings(typed ?? NO_READINGS, carried), [typed, carried])
   const verdict = judgeScreen(dto.protocol.content.screen, counted, dto.patient.isAdult)
 
-  const shown = new Set<keyof ScreenReadings>([...RSBI_READINGS, ...dto.protocol.content.screen.flatMap(({ criterion }) => readingsOf(criterion))])
+  const shown = new Set<keyof ScreenReadings>([
+    ...RSBI_READINGS,
+    ...dto.protocol.content.screen.flatMap(({ criterion }) => readingsOf(criterion)),
+  ])
   const unconfirmed = Object.keys(carried).filter((name): name is keyof Carried => shown.has(name as keyof ScreenReadings))
   const confirm = (names: readonly string[]) =>
     setCarried((now) => Object.fromEntries(Object.entries(now).filter(([name]) => !names.includes(name))) as Carried)
@@ -47,13 +50,19 @@ function startFrom(dto: ScreenFormDto): { values: ScreenFormInput; carried: Carr
   if (amending) {
     const observed = wallClock(amending.observedAt, dto.patient.timeZone)
     const values = {
-      ...shared, observed, amends: { id: amending.id, reason: '' }, excuse: amending.excuse, note: amending.note,
-      readings: amending.readings ?? NO_READINGS, confirmedUnlikely: amending.unlikely,
+      ...shared,
+      observed,
+      amends: { id: amending.id, reason: '' },
+      excuse: amending.excuse,
+      note: amending.note,
+      readings: amending.readings ?? NO_READINGS,
+      confirmedUnlikely: amending.unlikely,
     }
     return { values, carried: {} }
   }
   const [latest] = dto.screens
-  const left = latest?.result === 'incomplete' && latest.readings ? { observedAt: latest.observedAt, readings: latest.readings } : null
+  const left =
+    latest?.result === 'incomplete' && latest.readings ? { observedAt: latest.observedAt, readings: latest.readings } : null
   const { readings, carried } = carryOver(dto.prefill, left, dto.nowMs)
   return { values: { ...shared, observed: dto.wallClock, amends: null, excuse: null, note: null, readings }, carried }
 }

@@ -22,8 +22,16 @@ export function VerdictPanel({ verdict, unconfirmedCount }: { verdict: ScreenVer
         <Mark shape={look.shape} />
         {sentenceCase(SCREEN_RESULT_WORDS[verdict.result])}
       </p>
-      {reasonLines(verdict).map((line) => <p key={line} className="text-sm text-muted">{line}</p>)}
-      {unconfirmedCount > 0 ? <p className="text-sm text-muted">{unconfirmedCount === 1 ? '1 value' : `${unconfirmedCount} values`} carried over, to be confirmed</p> : null}
+      {reasonLines(verdict).map((line) => (
+        <p key={line} className="text-sm text-muted">
+          {line}
+        </p>
+      ))}
+      {unconfirmedCount > 0 ? (
+        <p className="text-sm text-muted">
+          {unconfirmedCount === 1 ? '1 value' : `${unconfirmedCount} values`} carried over, to be confirmed
+        </p>
+      ) : null}
     </div>
   )
 }

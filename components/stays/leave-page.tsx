@@ -17,7 +17,10 @@ import { todayKeys } from '@/lib/client/keys/today'
 import { wallClock } from '@/lib/client/wall-clock'
 import { endStaySchema, type MoveFormDto } from '@/lib/schemas/stays'
 
-const ENDS = [{ value: 'left_unit', label: 'Left the unit' }, { value: 'died', label: 'Died' }]
+const ENDS = [
+  { value: 'left_unit', label: 'Left the unit' },
+  { value: 'died', label: 'Died' },
+]
 
 /** The end of a stay in the unit. Ventilation that still runs is ended first, on its own page. */
 export function LeavePage({ dto }: { dto: MoveFormDto }) {
@@ -41,7 +44,12 @@ export function LeavePage({ dto }: { dto: MoveFormDto }) {
     <>
       <PageHeading
         title="End of the stay"
-        above={<p><span className="figure text-xl font-semibold text-ink">{stay.bedLabel}</span> {patient.familyName}, {patient.givenName}</p>}
+        above={
+          <p>
+            <span className="figure text-xl font-semibold text-ink">{stay.bedLabel}</span> {patient.familyName},{' '}
+            {patient.givenName}
+          </p>
+        }
         below="The bed becomes free. What was recorded stays."
       />
       <UnsavedGuard isDirty={form.formState.isDirty} />
@@ -49,7 +57,9 @@ export function LeavePage({ dto }: { dto: MoveFormDto }) {
         <ChoiceField control={form.control} name="end" label="How the stay ended" options={ENDS} />
         <ObservedField control={form.control} name="observed" label="At" timeZone={timeZone} nowMs={nowMs} />
         <FormErrorSummary control={form.control} submit={submit} />
-        <div><SubmitButton isSending={submit.isSending}>Record the end of the stay</SubmitButton></div>
+        <div>
+          <SubmitButton isSending={submit.isSending}>Record the end of the stay</SubmitButton>
+        </div>
       </Form>
     </>
   )

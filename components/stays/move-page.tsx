@@ -46,19 +46,41 @@ export function MovePage({ dto }: { dto: MoveFormDto }) {
     <>
       <PageHeading
         title="Move to another bed"
-        above={<p><span className="figure text-xl font-semibold text-ink">{stay.bedLabel}</span> {patient.familyName}, {patient.givenName}</p>}
+        above={
+          <p>
+            <span className="figure text-xl font-semibold text-ink">{stay.bedLabel}</span> {patient.familyName},{' '}
+            {patient.givenName}
+          </p>
+        }
         aside={<ButtonLink href={`/patients/${patient.id}/leave`}>Leaves the unit, or died</ButtonLink>}
       />
       <UnsavedGuard isDirty={form.formState.isDirty} />
       <Form submit={submit} label="Move to another bed" className="flex flex-col gap-6">
-        <SelectField control={form.control} name="unitId" label="Unit" options={units.map(({ id, name }) => ({ value: id, label: name }))} prompt="Choose the unit" />
-        <SelectField key={unitId} control={form.control} name="bedId" label="Free bed" options={options} prompt={options.length > 0 ? 'Choose the bed' : 'No free bed'} />
+        <SelectField
+          control={form.control}
+          name="unitId"
+          label="Unit"
+          options={units.map(({ id, name }) => ({ value: id, label: name }))}
+          prompt="Choose the unit"
+        />
+        <SelectField
+          key={unitId}
+          control={form.control}
+          name="bedId"
+          label="Free bed"
+          options={options}
+          prompt={options.length > 0 ? 'Choose the bed' : 'No free bed'}
+        />
         {isAway ? (
-          <Notice tone="info" title="To another unit">The record goes with the patient. People of this unit who do not belong to the other one can no longer open it.</Notice>
+          <Notice tone="info" title="To another unit">
+            The record goes with the patient. People of this unit who do not belong to the other one can no longer open it.
+          </Notice>
         ) : null}
         <ObservedField control={form.control} name="observed" label="Moved at" timeZone={timeZone} nowMs={nowMs} />
         <FormErrorSummary control={form.control} submit={submit} />
-        <div><SubmitButton isSending={submit.isSending}>Record the move</SubmitButton></div>
+        <div>
+          <SubmitButton isSending={submit.isSending}>Record the move</SubmitButton>
+        </div>
       </Form>
     </>
   )

@@ -21,21 +21,34 @@ export function EndedTrial({ trial, rules, timeZone, nowMs }: Props) {
   return (
     <article className="border-t border-line py-4">
       <h3 className="flex flex-wrap items-baseline gap-x-3">
-        <span className="figure text-lg font-semibold">{time(trial.observedAt)}–{time(end.observedAt)}</span>
-        <Tag shape={look.shape} tone={look.tone} className="text-lg">{look.words}</Tag>
+        <span className="figure text-lg font-semibold">
+          {time(trial.observedAt)}–{time(end.observedAt)}
+        </span>
+        <Tag shape={look.shape} tone={look.tone} className="text-lg">
+          {look.words}
+        </Tag>
         <span className="text-muted">after {formatDuration(end.observedAt - trial.observedAt)}</span>
       </h3>
       <p>{sentenceCase(techniqueText(trial))}</p>
       {end.rulesMet.length > 0 ? <p>Stop rules met: {end.rulesMet.map(({ words }) => words).join('; ')}.</p> : null}
       {end.reason ? <p>{sentenceCase(end.reason)}</p> : null}
       {end.returnedTo ? <p className="text-muted">Afterwards: {end.returnedTo}</p> : null}
-      {trial.startedAnywayBecause ? <p className="text-muted">Started against the order of the day: {trial.startedAnywayBecause}</p> : null}
+      {trial.startedAnywayBecause ? (
+        <p className="text-muted">Started against the order of the day: {trial.startedAnywayBecause}</p>
+      ) : null}
       <EntryMeta entry={end} timeZone={timeZone} nowMs={nowMs} />
       <details>
-        <summary className="min-h-[44px] cursor-pointer py-2.5 underline decoration-line decoration-2 underline-offset-4">{trial.observations.length} {trial.observations.length === 1 ? 'observation' : 'observations'}</summary>
+        <summary className="min-h-[44px] cursor-pointer py-2.5 underline decoration-line decoration-2 underline-offset-4">
+          {trial.observations.length} {trial.observations.length === 1 ? 'observation' : 'observations'}
+        </summary>
         <div className="flex flex-col gap-6 pt-3">
           <RateChart trial={trial} rules={rules} untilMs={end.observedAt} isRunning={false} />
-          <ObservationTable rows={trial.observations} caption={`Observations of the trial at ${time(trial.observedAt)}`} timeZone={timeZone} nowMs={nowMs} />
+          <ObservationTable
+            rows={trial.observations}
+            caption={`Observations of the trial at ${time(trial.observedAt)}`}
+            timeZone={timeZone}
+            nowMs={nowMs}
+          />
         </div>
       </details>
     </article>

@@ -11,12 +11,23 @@ import { limitText, limitWords } from '@/lib/weaning/limit-words'
 import type { ObservedReading, StopRule } from '@/lib/weaning/protocol'
 import { lastObserved } from './last-observed'
 
-type LastValuesProps = { trial: TrialDto; rules: readonly StopRule[]; predictedBodyWeightKg: number | null; timeZone: string; nowMs: number }
+type LastValuesProps = {
+  trial: TrialDto
+  rules: readonly StopRule[]
+  predictedBodyWeightKg: number | null
+  timeZone: string
+  nowMs: number
+}
 
 /** The last values of a trial, large, each against its baseline and the limits that look at it. */
 export function LastValues({ trial, rules, predictedBodyWeightKg, timeZone, nowMs }: LastValuesProps) {
   const age = (atMs: number | undefined) => (atMs === undefined ? '' : `at ${clockTime(atMs, timeZone, nowMs)}`)
-  const number = (reading: 'breathsPerMin' | 'tidalVolumeMl' | 'spo2Percent' | 'heartRatePerMin', label: string, unit: string, extra?: ReactNode) => {
+  const number = (
+    reading: 'breathsPerMin' | 'tidalVolumeMl' | 'spo2Percent' | 'heartRatePerMin',
+    label: string,
+    unit: string,
+    extra?: ReactNode,
+  ) => {
     const last = lastObserved(trial, reading)
     const before = trial.baseline[reading]
     return (
@@ -34,17 +45,34 @@ export function LastValues({ trial, rules, predictedBodyWeightKg, timeZone, nowM
   return (
     <dl className="grid grid-cols-1 gap-x-6 gap-y-4 phone:grid-cols-2 tablet:grid-cols-3">
       {number('breathsPerMin', 'Respiratory rate', '/min')}
-      {number('tidalVolumeMl', 'Tidal volume', 'mL', volume && predictedBodyWeightKg ? (
-        <p className="text-sm text-muted">{(volume.value / predictedBodyWeightKg).toFixed(1)} mL/kg PBW</p>
-      ) : null)}
-      <LabelledValue label="RSBI" value={rsbi?.rsbi === undefined || rsbi.rsbi === null ? null : rsbi.rsbi.toFixed(1)} unit="/min/L" missing="not assessed">
+      {number(
+        'tidalVolumeMl',
+        'Tidal volume',
+        'mL',
+        volume && predictedBodyWeightKg ? (
+          <p className="text-sm text-muted">{(volume.value / predictedBodyWeightKg).toFixed(1)} mL/kg PBW</p>
+        ) : null,
+      )}
+      <LabelledValue
+        label="RSBI"
+        value={rsbi?.rsbi === undefined || rsbi.rsbi === null ? null : rsbi.rsbi.toFixed(1)}
+        unit="/min/L"
+        missing="not assessed"
+      >
         <Baseline text={trial.baselineRsbi === null ? null : trial.baselineRsbi.toFixed(1)} age={age(rsbi?.observedAt)} />
-        <p className="text-sm text-muted">reads lower on support than without</p>
+        <p className="text-sm text-muted">
+          {trial.technique === 't_piece' ? 'on T-piece, without support' : 'on support: reads lower than without'}
+        </p>
         <Limits reading="rsbi" rules={rules} judged={trial.rules} />
       </LabelledValue>
       {number('spo2Percent', 'SpO2', '%')}
       {number('heartRatePerMin', 'Heart rate', '/min')}
-      <LabelledValue label="Blood pressure" value={pressure ? pressureText(pressure) : null} unit="mmHg" missing="not observed yet">
+      <LabelledValue
+        label="Blood pressure"
+        value={pressure ? pressureText(pressure) : null}
+        unit="mmHg"
+        missing="not observed yet"
+      >
         <Baseline text={trial.baseline.systolicMmHg === null ? null : pressureText(trial.baseline)} age={age(systolic?.atMs)} />
         <Limits reading="systolicMmHg" rules={rules} judged={trial.rules} />
       </LabelledValue>
@@ -57,7 +85,9 @@ function pressureText({ systolicMmHg, diastolicMmHg }: { systolicMmHg: number | 
 }
 
 function Baseline({ text, age }: { text: string | null; age: string }) {
-  return <p className="text-sm text-muted">{[age, text === null ? 'no baseline' : `baseline ${text}`].filter(Boolean).join(' · ')}</p>
+  return (
+    <p className="text-sm text-muted">{[age, text === null ? 'no baseline' : `baseline ${text}`].filter(Boolean).join(' · ')}</p>
+  )
 }
 
 const LOOK: Record<JudgedRuleDto['state'], { shape: MarkShape; tone: Tone; word: string }> = {
@@ -68,14 +98,24 @@ const LOOK: Record<JudgedRuleDto['state'], { shape: MarkShape; tone: Tone; word:
 }
 
 /** The limits of one reading, each with its state in a mark and a word. */
-function Limits({ reading, rules, judged }: { reading: ObservedReading; rules: readonly StopRule[]; judged: readonly JudgedRuleDto[] }) {
+function Limits({
+  reading,
+  rules,
+  judged,
+}: {
+  reading: ObservedReading
+  rules: readonly StopRule[]
+  judged: readonly JudgedRuleDto[]
+}) {
   const own = rules.filter((rule) => (rule.kind === 'limit' || rule.kind === 'change') && rule.reading === reading)
   return own.map((rule) => {
     const look = LOOK[judged.find(({ id }) => id === rule.id)?.state ?? 'unknown']
     return (
       <p key={rule.id} className={cn('flex items-baseline gap-1.5 text-sm font-semibold', TONE_TEXT[look.tone])}>
         <Mark shape={look.shape} className="translate-y-[0.06em]" />
-        <span>{shortRule(rule)} · {look.word}</span>
+        <span>
+          {shortRule(rule)} · {look.word}
+        </span>
       </p>
     )
   })

@@ -29,23 +29,80 @@ export function RateChart({ trial, rules, untilMs, isRunning }: RateChartProps) 
     <figure className="m-0">
       <figcaption className="mb-2 font-semibold">Respiratory rate, /min</figcaption>
       <div className="relative pl-9">
-        {[0, 10, 20, 30, 40].filter((tick) => tick <= highest).map((tick) => (
-          <span key={tick} aria-hidden="true" className="figure absolute left-0 w-7 -translate-y-1/2 text-right text-sm text-muted" style={{ top: y(tick) }}>{tick}</span>
-        ))}
+        {[0, 10, 20, 30, 40]
+          .filter((tick) => tick <= highest)
+          .map((tick) => (
+            <span
+              key={tick}
+              aria-hidden="true"
+              className="figure absolute left-0 w-7 -translate-y-1/2 text-right text-sm text-muted"
+              style={{ top: y(tick) }}
+            >
+              {tick}
+            </span>
+          ))}
         <svg width="100%" height={HEIGHT} role="img" aria-label={chartWords(points, limits)} className="overflow-visible">
           <line x1="0" x2="100%" y1={HEIGHT} y2={HEIGHT} className="stroke-line" strokeWidth="2" />
-          {limits.map((rule) => <LimitLine key={rule.id} rule={rule} y={y(rule.limit.value)} />)}
-          <line x1={x(trial.plannedDurationMin)} x2={x(trial.plannedDurationMin)} y1="0" y2={HEIGHT} className="stroke-muted" strokeDasharray="2 4" />
+          {limits.map((rule) => (
+            <LimitLine key={rule.id} rule={rule} y={y(rule.limit.value)} />
+          ))}
+          <line
+            x1={x(trial.plannedDurationMin)}
+            x2={x(trial.plannedDurationMin)}
+            y1="0"
+            y2={HEIGHT}
+            className="stroke-muted"
+            strokeDasharray="2 4"
+          />
           {points.slice(1).map((point, index) => {
             const before = points[index]
-            return before ? <line key={point.minute} x1={x(before.minute)} y1={y(before.rate)} x2={x(point.minute)} y2={y(point.rate)} className="stroke-ink" strokeWidth="2.5" /> : null
+            return before ? (
+              <line
+                key={point.minute}
+                x1={x(before.minute)}
+                y1={y(before.rate)}
+                x2={x(point.minute)}
+                y2={y(point.rate)}
+                className="stroke-ink"
+                strokeWidth="2.5"
+              />
+            ) : null
           })}
-          {points.map((point) => <circle key={point.minute} cx={x(point.minute)} cy={y(point.rate)} r="5.5" className="fill-paper stroke-ink" strokeWidth="2.5" />)}
-          {last ? <text x={x(last.minute)} y={y(last.rate) - 12} textAnchor={last.minute > lastMin / 2 ? 'end' : 'start'} className="figure fill-ink text-sm font-semibold">{last.rate}</text> : null}
-          {isRunning ? <line x1={x(elapsedMin)} x2={x(elapsedMin)} y1="-6" y2={HEIGHT + 4} className="stroke-dawn" strokeWidth="2.5" /> : null}
+          {points.map((point) => (
+            <circle
+              key={point.minute}
+              cx={x(point.minute)}
+              cy={y(point.rate)}
+              r="5.5"
+              className="fill-paper stroke-ink"
+              strokeWidth="2.5"
+            />
+          ))}
+          {last ? (
+            <text
+              x={x(last.minute)}
+              y={y(last.rate) - 12}
+              textAnchor={last.minute > lastMin / 2 ? 'end' : 'start'}
+              className="figure fill-ink text-sm font-semibold"
+            >
+              {last.rate}
+            </text>
+          ) : null}
+          {isRunning ? (
+            <line x1={x(elapsedMin)} x2={x(elapsedMin)} y1="-6" y2={HEIGHT + 4} className="stroke-dawn" strokeWidth="2.5" />
+          ) : null}
         </svg>
         <div aria-hidden="true" className="relative h-6 text-sm text-muted">
-          {minuteTicks(lastMin).map((tick) => <span key={tick} className="figure absolute top-1 -translate-x-1/2 whitespace-nowrap first:translate-x-0" style={{ left: x(tick) }}>{tick}{tick === 0 ? ' min' : ''}</span>)}
+          {minuteTicks(lastMin).map((tick) => (
+            <span
+              key={tick}
+              className="figure absolute top-1 -translate-x-1/2 whitespace-nowrap first:translate-x-0"
+              style={{ left: x(tick) }}
+            >
+              {tick}
+              {tick === 0 ? ' min' : ''}
+            </span>
+          ))}
         </div>
       </div>
     </figure>
@@ -57,7 +114,10 @@ function LimitLine({ rule, y }: { rule: Extract<StopRule, { kind: 'limit' }>; y:
   return (
     <>
       <line x1="0" x2="100%" y1={y} y2={y} className="stroke-stop" strokeWidth="1.5" strokeDasharray="6 4" />
-      <text x="6" y={isUpper ? y - 6 : y + 16} className="fill-muted text-xs">{isUpper ? 'over' : 'under'} {rule.limit.value}{rule.sustainedMin > 0 ? ` for ${rule.sustainedMin} min` : ''}</text>
+      <text x="6" y={isUpper ? y - 6 : y + 16} className="fill-muted text-xs">
+        {isUpper ? 'over' : 'under'} {rule.limit.value}
+        {rule.sustainedMin > 0 ? ` for ${rule.sustainedMin} min` : ''}
+      </text>
     </>
   )
 }
@@ -70,7 +130,9 @@ function minuteTicks(lastMin: number): number[] {
 /** Baseline at minute 0 and every observation that has a rate, by time. */
 export function ratePoints(trial: TrialDto): Point[] {
   const baseline = trial.baseline.breathsPerMin
-  const looks = trial.observations.flatMap(({ minute, readings }) => (readings.breathsPerMin === null ? [] : [{ minute, rate: readings.breathsPerMin }]))
+  const looks = trial.observations.flatMap(({ minute, readings }) =>
+    readings.breathsPerMin === null ? [] : [{ minute, rate: readings.breathsPerMin }],
+  )
   return baseline === null ? looks : [{ minute: 0, rate: baseline }, ...looks]
 }
 

@@ -13,14 +13,22 @@ export function ReadinessLines({ readiness, timeZone, nowMs }: Props) {
   return (
     <div className="mb-6 flex flex-col gap-3">
       <p className="text-muted">
-        {screen ? `Screen ${time(screen.observedAt)}: ${SCREEN_RESULT_WORDS[screen.result]}, ${screen.recordedByName}` : 'Screen: not recorded today'}
+        {screen
+          ? `Screen ${time(screen.observedAt)}: ${SCREEN_RESULT_WORDS[screen.result]}, ${screen.recordedByName}`
+          : 'Screen: not recorded today'}
         {' · '}
-        {hold ? `Sedation hold ${time(hold.observedAt)}: ${hold.outcome ? HOLD_OUTCOME_WORDS[hold.outcome] : HOLD_START_WORDS[hold.start]}, ${hold.recordedByName}` : 'Sedation hold: not recorded today'}
+        {hold
+          ? `Sedation hold ${time(hold.observedAt)}: ${hold.outcome ? HOLD_OUTCOME_WORDS[hold.outcome] : HOLD_START_WORDS[hold.start]}, ${hold.recordedByName}`
+          : 'Sedation hold: not recorded today'}
       </p>
       {closes === null ? null : <PairingWindow closesMs={closes} nowMs={nowMs} at={time(closes)} />}
       {readiness.isInOrder ? null : (
         <Notice tone="stop" title="The day’s record does not lead to a trial yet">
-          <ul className="list-disc pl-5">{readiness.missing.map((each) => <li key={each}>{each}</li>)}</ul>
+          <ul className="list-disc pl-5">
+            {readiness.missing.map((each) => (
+              <li key={each}>{each}</li>
+            ))}
+          </ul>
           <p>Record that first. If the trial starts all the same, say why below; the reason stays in the record.</p>
         </Notice>
       )}
@@ -29,6 +37,11 @@ export function ReadinessLines({ readiness, timeZone, nowMs }: Props) {
 }
 
 function PairingWindow({ closesMs, nowMs, at }: { closesMs: number; nowMs: number; at: string }) {
-  if (nowMs > closesMs) return <p className="font-semibold text-stop">The pairing window with the sedation hold closed at {at}.</p>
-  return <p className="font-semibold">The pairing window with the sedation hold closes at {at}, in {formatDuration(closesMs - nowMs)}.</p>
+  if (nowMs > closesMs)
+    return <p className="font-semibold text-stop">The pairing window with the sedation hold closed at {at}.</p>
+  return (
+    <p className="font-semibold">
+      The pairing window with the sedation hold closes at {at}, in {formatDuration(closesMs - nowMs)}.
+    </p>
+  )
 }

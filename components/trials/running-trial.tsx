@@ -30,11 +30,15 @@ export function RunningTrial({ dto, trial, nowMs }: Props) {
       <RateChart trial={trial} rules={rules} untilMs={nowMs} isRunning />
       <LastValues trial={trial} rules={rules} predictedBodyWeightKg={predictedBodyWeightKg} timeZone={timeZone} nowMs={nowMs} />
       <RuleStates rules={trial.rules} title="Stop rules" timeZone={timeZone} nowMs={nowMs} />
-      {ending === null && dto.may.observe ? <TrialObservationForm dto={dto} trialId={trial.entryId} amending={null} nowMs={nowMs} /> : null}
+      {ending === null && dto.may.observe ? (
+        <TrialObservationForm dto={dto} trialId={trial.entryId} amending={null} nowMs={nowMs} />
+      ) : null}
       {dto.may.end ? (
         ending === null ? (
           <section aria-labelledby="end-trial" className="border-t-2 border-ink pt-4">
-            <h2 id="end-trial" className="mb-3 text-lg font-bold">End the trial</h2>
+            <h2 id="end-trial" className="mb-3 text-lg font-bold">
+              End the trial
+            </h2>
             <div className="flex flex-wrap gap-3">
               <Button onClick={() => setEnding('passed')}>Passed</Button>
               <Button onClick={() => setEnding('failed')}>Failed</Button>
@@ -42,7 +46,16 @@ export function RunningTrial({ dto, trial, nowMs }: Props) {
             </div>
           </section>
         ) : (
-          <TrialEndForm key={ending} dto={dto} trialId={trial.entryId} trial={trial} outcome={ending} amending={null} nowMs={nowMs} onBack={() => setEnding(null)} />
+          <TrialEndForm
+            key={ending}
+            dto={dto}
+            trialId={trial.entryId}
+            trial={trial}
+            outcome={ending}
+            amending={null}
+            nowMs={nowMs}
+            onBack={() => setEnding(null)}
+          />
         )
       ) : null}
       <ObservationTable rows={trial.observations} caption="Observations of this trial" timeZone={timeZone} nowMs={nowMs} />

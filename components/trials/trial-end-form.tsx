@@ -46,7 +46,8 @@ export function TrialEndForm({ dto, trialId, trial, outcome, amending, nowMs, on
   const form = useForm({
     resolver: zodResolver(endTrialSchema),
     defaultValues: {
-      episodeId, trialId,
+      episodeId,
+      trialId,
       observed: amending ? wallClock(amending.observedAt, timeZone) : wallClock(nowMs, timeZone),
       amends: amending ? { id: amending.id, reason: '' } : null,
       outcome: amending?.outcome ?? outcome ?? notAnswered<TrialOutcome>(),
@@ -73,23 +74,60 @@ export function TrialEndForm({ dto, trialId, trial, outcome, amending, nowMs, on
   return (
     <section aria-labelledby="end-trial" className="border-t-2 border-ink pt-4">
       <UnsavedGuard isDirty={form.formState.isDirty} />
-      <h2 id="end-trial" className="mb-3 text-lg font-bold">End of the trial</h2>
+      <h2 id="end-trial" className="mb-3 text-lg font-bold">
+        End of the trial
+      </h2>
       <AmendPanel form={form} entry={amending} timeZone={timeZone} nowMs={nowMs} />
       <Form submit={submit} label="End of the trial" className="flex flex-col gap-6">
-        <ChoiceField control={form.control} name="outcome" label="Outcome" options={TRIAL_OUTCOMES.map((value) => ({ value, label: sentenceCase(TRIAL_OUTCOME_WORDS[value]) }))} />
-        {chosen === 'passed' ? <PassNote trial={trial} nowMs={nowMs} timeZone={timeZone} met={alreadyMet.map(({ words }) => words)} /> : null}
+        <ChoiceField
+          control={form.control}
+          name="outcome"
+          label="Outcome"
+          options={TRIAL_OUTCOMES.map((value) => ({ value, label: sentenceCase(TRIAL_OUTCOME_WORDS[value]) }))}
+        />
+        {chosen === 'passed' ? (
+          <PassNote trial={trial} nowMs={nowMs} timeZone={timeZone} met={alreadyMet.map(({ words }) => words)} />
+        ) : null}
         {chosen === 'failed' ? (
           <>
             {alreadyMet.length > 0 ? <p>Met by the observations: {alreadyMet.map(({ words }) => words).join('; ')}.</p> : null}
-            <CheckListField control={form.control} name="rulesMet" label={alreadyMet.length > 0 ? 'What else ended it' : 'What ended it'} tone="stop" options={others.map((rule) => ({ value: rule.id, label: sentenceCase(describeRule(rule)) }))} />
+            <CheckListField
+              control={form.control}
+              name="rulesMet"
+              label={alreadyMet.length > 0 ? 'What else ended it' : 'What ended it'}
+              tone="stop"
+              options={others.map((rule) => ({ value: rule.id, label: sentenceCase(describeRule(rule)) }))}
+            />
           </>
         ) : null}
-        <TextareaField control={form.control} name="reason" label={chosen === 'stopped' ? 'Why it was stopped' : chosen === 'failed' ? 'Remark' : 'Reason, when one is needed'} rows={2} maxLength={1000} />
+        <TextareaField
+          control={form.control}
+          name="reason"
+          label={chosen === 'stopped' ? 'Why it was stopped' : chosen === 'failed' ? 'Remark' : 'Reason, when one is needed'}
+          rows={2}
+          maxLength={1000}
+        />
         <div className="flex flex-col gap-1">
-          <TextField control={form.control} name="returnedTo" label={chosen === 'passed' ? 'Support meanwhile' : 'Returned to'} width={44} maxLength={200} hint={chosen === 'passed' ? 'Left on the trial settings, or what the patient went back to.' : undefined} />
+          <TextField
+            control={form.control}
+            name="returnedTo"
+            label={chosen === 'passed' ? 'Support meanwhile' : 'Returned to'}
+            width={44}
+            maxLength={200}
+            hint={chosen === 'passed' ? 'Left on the trial settings, or what the patient went back to.' : undefined}
+          />
           {settings ? (
             <div>
-              <Button variant="quiet" className="text-sm" onClick={() => form.setValue('returnedTo', settingsText(settings), { shouldDirty: true, shouldValidate: form.formState.isSubmitted })}>
+              <Button
+                variant="quiet"
+                className="text-sm"
+                onClick={() =>
+                  form.setValue('returnedTo', settingsText(settings), {
+                    shouldDirty: true,
+                    shouldValidate: form.formState.isSubmitted,
+                  })
+                }
+              >
                 As before: {settingsText(settings)}
               </Button>
             </div>
@@ -99,7 +137,11 @@ export function TrialEndForm({ dto, trialId, trial, outcome, amending, nowMs, on
         <FormErrorSummary control={form.control} submit={submit} />
         <div className="flex flex-wrap gap-3">
           <SubmitButton isSending={submit.isSending}>{amending ? 'Record correction' : 'Record the end'}</SubmitButton>
-          {onBack ? <Button variant="quiet" onClick={onBack}>Back to the running trial</Button> : null}
+          {onBack ? (
+            <Button variant="quiet" onClick={onBack}>
+              Back to the running trial
+            </Button>
+          ) : null}
         </div>
       </Form>
     </section>
@@ -112,7 +154,17 @@ function settingsText(settings: NonNullable<TrialFormDto['prefill']['settings']>
 }
 
 /** What a pass needs a reason for: before the planned end, or against a limit that was met. */
-function PassNote({ trial, nowMs, timeZone, met }: { trial: RunningTrialDto | null; nowMs: number; timeZone: string; met: readonly string[] }) {
+function PassNote({
+  trial,
+  nowMs,
+  timeZone,
+  met,
+}: {
+  trial: RunningTrialDto | null
+  nowMs: number
+  timeZone: string
+  met: readonly string[]
+}) {
   if (!trial) return null
   const isEarly = nowMs < trial.plannedEndMs
   if (!isEarly && met.length === 0) return null

@@ -28,7 +28,8 @@ export function TrialObservationForm({ dto, trialId, amending, nowMs }: Props) {
   const form = useForm({
     resolver: zodResolver(observeTrialSchema),
     defaultValues: {
-      episodeId, trialId,
+      episodeId,
+      trialId,
       observed: amending ? wallClock(amending.observedAt, timeZone) : wallClock(nowMs, timeZone),
       amends: amending ? { id: amending.id, reason: '' } : null,
       readings: amending?.readings ?? NO_OBSERVATION,
@@ -48,13 +49,24 @@ export function TrialObservationForm({ dto, trialId, amending, nowMs }: Props) {
   return (
     <section aria-labelledby="observe-trial" className="border-t-2 border-ink pt-4">
       <UnsavedGuard isDirty={form.formState.isDirty} />
-      <h2 id="observe-trial" className="mb-3 text-lg font-bold">{amending ? 'Observation' : 'Add an observation'}</h2>
+      <h2 id="observe-trial" className="mb-3 text-lg font-bold">
+        {amending ? 'Observation' : 'Add an observation'}
+      </h2>
       <AmendPanel form={form} entry={amending} timeZone={timeZone} nowMs={nowMs} />
       <Form submit={submit} label="Observation during the trial" className="flex flex-col gap-5">
-        <ObservationFields form={form} at="readings" numbers={OBSERVED_NUMBERS} hasGas hasRass={false} signsLabel="Signs of distress" />
+        <ObservationFields
+          form={form}
+          at="readings"
+          numbers={OBSERVED_NUMBERS}
+          hasGas
+          hasRass={false}
+          signsLabel="Signs of distress"
+        />
         <ObservedField control={form.control} name="observed" timeZone={timeZone} nowMs={nowMs} />
         <FormErrorSummary control={form.control} submit={submit} />
-        <div><SubmitButton isSending={submit.isSending}>{amending ? 'Record correction' : 'Record observation'}</SubmitButton></div>
+        <div>
+          <SubmitButton isSending={submit.isSending}>{amending ? 'Record correction' : 'Record observation'}</SubmitButton>
+        </div>
       </Form>
     </section>
   )

@@ -47,7 +47,16 @@ export function TrialPage({ initial, amend }: { initial: TrialFormDto; amend: st
         aside={
           <ElapsedClock sinceMs={running.observedAt} nowMs={nowMs}>
             <PlannedEnd trial={running} nowMs={nowMs} timeZone={timeZone} />
-            {running.nextObservation ? <p><DueLine what={`Observation ${running.nextObservation.minute} min`} dueMs={running.nextObservation.dueMs} nowMs={nowMs} timeZone={timeZone} /></p> : null}
+            {running.nextObservation ? (
+              <p>
+                <DueLine
+                  what={`Observation ${running.nextObservation.minute} min`}
+                  dueMs={running.nextObservation.dueMs}
+                  nowMs={nowMs}
+                  timeZone={timeZone}
+                />
+              </p>
+            ) : null}
           </ElapsedClock>
         }
       >
@@ -74,11 +83,29 @@ function NoTrialRunning({ data, nowMs, isStale }: { data: TrialFormDto; nowMs: n
   return (
     <StepPage title="Breathing trial" form={data} isStale={isStale}>
       <AdultsOnly isAdult={patient.isAdult} patientId={patient.patientId} mayCorrect />
-      {trials.length > 0 && !showsForm ? <NextMoveLine label="What comes next" move={move} href={`/patients/${patient.patientId}`} timeZone={patient.timeZone} nowMs={nowMs} /> : null}
+      {trials.length > 0 && !showsForm ? (
+        <NextMoveLine
+          label="What comes next"
+          move={move}
+          href={`/patients/${patient.patientId}`}
+          timeZone={patient.timeZone}
+          nowMs={nowMs}
+        />
+      ) : null}
       {trials.length > 0 ? (
         <section className="my-6" aria-labelledby="trials-today">
-          <h2 id="trials-today" className="mb-2 text-lg font-bold">Recorded today</h2>
-          {trials.map((trial) => <EndedTrial key={trial.id} trial={trial} rules={data.protocol.content.trial.stopRules} timeZone={patient.timeZone} nowMs={nowMs} />)}
+          <h2 id="trials-today" className="mb-2 text-lg font-bold">
+            Recorded today
+          </h2>
+          {trials.map((trial) => (
+            <EndedTrial
+              key={trial.id}
+              trial={trial}
+              rules={data.protocol.content.trial.stopRules}
+              timeZone={patient.timeZone}
+              nowMs={nowMs}
+            />
+          ))}
         </section>
       ) : null}
       {showsForm ? <TrialStartForm dto={data} nowMs={nowMs} /> : null}
@@ -95,7 +122,9 @@ function NoTrialRunning({ data, nowMs, isStale }: { data: TrialFormDto; nowMs: n
 function Correction({ dto, nowMs }: { dto: TrialFormDto; nowMs: number }) {
   const { amending } = dto
   if (amending?.kind === 'start') return <TrialStartForm dto={dto} nowMs={nowMs} />
-  if (amending?.kind === 'observation') return <TrialObservationForm dto={dto} trialId={amending.trialId} amending={amending.observation} nowMs={nowMs} />
-  if (amending?.kind === 'end') return <TrialEndForm dto={dto} trialId={amending.trialId} trial={null} amending={amending.end} nowMs={nowMs} />
+  if (amending?.kind === 'observation')
+    return <TrialObservationForm dto={dto} trialId={amending.trialId} amending={amending.observation} nowMs={nowMs} />
+  if (amending?.kind === 'end')
+    return <TrialEndForm dto={dto} trialId={amending.trialId} trial={null} amending={amending.end} nowMs={nowMs} />
   return null
 }

@@ -53,7 +53,15 @@ export function TrialStartForm({ dto, nowMs }: { dto: TrialFormDto; nowMs: numbe
     invalidates: [stepKeys.root, todayKeys.root, patientKeys.root],
   })
   const beside = (name: CarriedField, label: string) =>
-    name in carried ? <CarriedValues observedAt={[carried[name]]} onConfirm={() => confirm([name])} label={label} timeZone={timeZone} nowMs={nowMs} /> : undefined
+    name in carried ? (
+      <CarriedValues
+        observedAt={[carried[name]]}
+        onConfirm={() => confirm([name])}
+        label={label}
+        timeZone={timeZone}
+        nowMs={nowMs}
+      />
+    ) : undefined
   const confirmOnEnter = (event: KeyboardEvent<HTMLElement>) => {
     if (event.key === 'Enter' && event.target instanceof HTMLInputElement) confirm([event.target.name])
   }
@@ -61,7 +69,11 @@ export function TrialStartForm({ dto, nowMs }: { dto: TrialFormDto; nowMs: numbe
   return (
     <div ref={frame}>
       <UnsavedGuard isDirty={form.formState.isDirty} />
-      {amended ? <AmendPanel form={form} entry={amended} timeZone={timeZone} nowMs={nowMs} /> : <ReadinessLines readiness={dto.readiness} timeZone={timeZone} nowMs={nowMs} />}
+      {amended ? (
+        <AmendPanel form={form} entry={amended} timeZone={timeZone} nowMs={nowMs} />
+      ) : (
+        <ReadinessLines readiness={dto.readiness} timeZone={timeZone} nowMs={nowMs} />
+      )}
       <Form submit={submit} label="Start of the breathing trial" className="flex flex-col gap-8">
         <fieldset className="flex flex-col gap-5" onKeyDown={confirmOnEnter}>
           <legend className="mb-3 text-lg font-bold">Technique</legend>
@@ -77,15 +89,37 @@ export function TrialStartForm({ dto, nowMs }: { dto: TrialFormDto; nowMs: numbe
             }}
           />
           <div className="flex flex-wrap gap-x-5 gap-y-4">
-            {technique === 'pressure_support' ? <ReadingField form={form} name="pressureSupportCmH2O" reading="pressureSupportCmH2O" /> : null}
-            {technique === 'pressure_support' || technique === 'cpap' ? <ReadingField form={form} name="peepCmH2O" reading="peepCmH2O" label={technique === 'cpap' ? 'CPAP' : undefined} /> : null}
-            <ReadingField form={form} name="fio2Fraction" reading="fio2Fraction" beside={beside('fio2Fraction', 'FiO2')} onTyped={() => confirm(['fio2Fraction'])} />
-            <NumberField control={form.control} name="plannedDurationMin" label="Planned length" unit="min" digits={4} isWhole hint={`The unit’s protocol: ${shortestMin} to ${longestMin} min`} />
+            {technique === 'pressure_support' ? (
+              <ReadingField form={form} name="pressureSupportCmH2O" reading="pressureSupportCmH2O" />
+            ) : null}
+            {technique === 'pressure_support' || technique === 'cpap' ? (
+              <ReadingField form={form} name="peepCmH2O" reading="peepCmH2O" label={technique === 'cpap' ? 'CPAP' : undefined} />
+            ) : null}
+            <ReadingField
+              form={form}
+              name="fio2Fraction"
+              reading="fio2Fraction"
+              beside={beside('fio2Fraction', 'FiO2')}
+              onTyped={() => confirm(['fio2Fraction'])}
+            />
+            <NumberField
+              control={form.control}
+              name="plannedDurationMin"
+              label="Planned length"
+              unit="min"
+              digits={4}
+              isWhole
+              hint={`The unit’s protocol: ${shortestMin} to ${longestMin} min`}
+            />
           </div>
         </fieldset>
         <fieldset className="flex flex-col gap-5" onKeyDown={confirmOnEnter}>
           <legend className="mb-3 text-lg font-bold">Baseline, just before the start</legend>
-          {open.length > 1 ? <div><Button onClick={() => confirm(open)}>Confirm all {open.length} carried-over values</Button></div> : null}
+          {open.length > 1 ? (
+            <div>
+              <Button onClick={() => confirm(open)}>Confirm all {open.length} carried-over values</Button>
+            </div>
+          ) : null}
           <ObservationFields
             form={form}
             at="baseline"
@@ -96,19 +130,33 @@ export function TrialStartForm({ dto, nowMs }: { dto: TrialFormDto; nowMs: numbe
             onTyped={(reading) => confirm([`baseline.${reading}`])}
           />
         </fieldset>
-        {needsReason ? <TextareaField control={form.control} name="startedAnywayBecause" label="Why the trial starts all the same" rows={2} maxLength={500} /> : null}
+        {needsReason ? (
+          <TextareaField
+            control={form.control}
+            name="startedAnywayBecause"
+            label="Why the trial starts all the same"
+            rows={2}
+            maxLength={500}
+          />
+        ) : null}
         <ObservedField control={form.control} name="observed" timeZone={timeZone} nowMs={nowMs} label="Trial starts at" />
         <FormErrorSummary control={form.control} submit={submit} />
-        <div><SubmitButton isSending={submit.isSending}>{amended ? 'Record correction' : 'Start the trial'}</SubmitButton></div>
+        <div>
+          <SubmitButton isSending={submit.isSending}>{amended ? 'Record correction' : 'Start the trial'}</SubmitButton>
+        </div>
       </Form>
       <ConflictDialog
         failure={submit.failure}
         patientId={patientId}
         what="trial"
-        onRecordAnyway={amended ? undefined : () => {
-          form.setValue('recordAnyway', true)
-          frame.current?.querySelector('form')?.requestSubmit()
-        }}
+        onRecordAnyway={
+          amended
+            ? undefined
+            : () => {
+                form.setValue('recordAnyway', true)
+                frame.current?.querySelector('form')?.requestSubmit()
+              }
+        }
       />
     </div>
   )

@@ -39,7 +39,9 @@ export function useTrialStart(dto: TrialFormDto) {
 }
 
 function unconfirmedErrors(names: readonly string[]): FieldErrors<TrialStartInput> {
-  const baseline = Object.fromEntries(names.filter((name) => name.startsWith('baseline.')).map((name) => [name.slice('baseline.'.length), UNCONFIRMED]))
+  const baseline = Object.fromEntries(
+    names.filter((name) => name.startsWith('baseline.')).map((name) => [name.slice('baseline.'.length), UNCONFIRMED]),
+  )
   return {
     ...(names.includes('fio2Fraction') ? { fio2Fraction: UNCONFIRMED } : {}),
     ...(Object.keys(baseline).length > 0 ? { baseline } : {}),
@@ -52,8 +54,17 @@ function startFrom(dto: TrialFormDto): { values: TrialStartInput; carried: Carri
     const { trial } = dto.amending
     const { technique, pressureSupportCmH2O, peepCmH2O, fio2Fraction, plannedDurationMin, startedAnywayBecause, unlikely } = trial
     const values = {
-      ...shared, observed: wallClock(trial.observedAt, dto.patient.timeZone), amends: { id: trial.id, reason: '' }, technique, pressureSupportCmH2O,
-      peepCmH2O, fio2Fraction, plannedDurationMin, startedAnywayBecause, baseline: baselineOf(trial.baseline), confirmedUnlikely: unlikely,
+      ...shared,
+      observed: wallClock(trial.observedAt, dto.patient.timeZone),
+      amends: { id: trial.id, reason: '' },
+      technique,
+      pressureSupportCmH2O,
+      peepCmH2O,
+      fio2Fraction,
+      plannedDurationMin,
+      startedAnywayBecause,
+      baseline: baselineOf(trial.baseline),
+      confirmedUnlikely: unlikely,
     }
     return { values, carried: {} }
   }
@@ -71,9 +82,17 @@ function startFrom(dto: TrialFormDto): { values: TrialStartInput; carried: Carri
     spo2Percent: offer('baseline.spo2Percent', settings?.spo2Percent, BASELINE_CARRIED_MS),
   })
   const values = {
-    ...shared, observed: dto.wallClock, amends: null, technique: notAnswered<TrialStartInput['technique']>(), pressureSupportCmH2O: null, peepCmH2O: null,
+    ...shared,
+    observed: dto.wallClock,
+    amends: null,
+    technique: notAnswered<TrialStartInput['technique']>(),
+    pressureSupportCmH2O: null,
+    peepCmH2O: null,
     fio2Fraction: offer('fio2Fraction', settings?.fio2Fraction, SETTING_CARRIED_MS) ?? notAnswered<number>(),
-    plannedDurationMin: dto.protocol.content.trial.defaultDurationMin, startedAnywayBecause: null, baseline, confirmedUnlikely: [],
+    plannedDurationMin: dto.protocol.content.trial.defaultDurationMin,
+    startedAnywayBecause: null,
+    baseline,
+    confirmedUnlikely: [],
   }
   return { values, carried }
 }

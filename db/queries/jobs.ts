@@ -17,11 +17,15 @@ export function findLastJobRun(tx: Tx, job: string) {
 
 /** Removes finished, successful runs of before a moment; failures stay. */
 export function deleteOldJobRuns(tx: Tx, before: number): void {
-  tx.delete(jobRuns).where(and(lt(jobRuns.startedAt, before), eq(jobRuns.result, 'ok'))).run()
+  tx.delete(jobRuns)
+    .where(and(lt(jobRuns.startedAt, before), eq(jobRuns.result, 'ok')))
+    .run()
 }
 
 /** Marks runs that never ended (their process died) as failed. */
 export function failUnfinishedJobRuns(tx: Tx, startedBefore: number, endedAt: number): void {
-  tx.update(jobRuns).set({ endedAt, result: 'failed', detail: 'The process ended before the run did.' })
-    .where(and(isNull(jobRuns.endedAt), lt(jobRuns.startedAt, startedBefore))).run()
+  tx.update(jobRuns)
+    .set({ endedAt, result: 'failed', detail: 'The process ended before the run did.' })
+    .where(and(isNull(jobRuns.endedAt), lt(jobRuns.startedAt, startedBefore)))
+    .run()
 }

@@ -1,7 +1,7 @@
 import 'server-only'
-import { and, eq, gt, inArray, isNull, lt, ne, notInArray, sql } from 'drizzle-orm'
+import { and, asc, eq, gt, inArray, isNull, lt, ne, notInArray, sql } from 'drizzle-orm'
 import type { Db, Tx } from '../client'
-import { account, hospitals, memberships, people, rateLimit, session, sessionStates, user, verification } from '../schema'
+import { account, hospitals, memberships, people, rateLimit, session, sessionStates, units, user, verification } from '../schema'
 
 const prepare = (db: Db) => ({
   standing: db
@@ -27,7 +27,9 @@ const prepare = (db: Db) => ({
   memberships: db
     .select({ unitId: memberships.unitId, role: memberships.role })
     .from(memberships)
+    .innerJoin(units, eq(units.id, memberships.unitId))
     .where(and(eq(memberships.personId, sql.placeholder('personId')), isNull(memberships.endedAt)))
+    .orderBy(asc(units.name))
     .prepare(),
 })
 

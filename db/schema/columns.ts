@@ -17,14 +17,24 @@ export const entryColumns = (self: () => AnySQLiteColumn) => ({
   entryVersion: integer('entry_version').notNull().default(1),
   supersedesId: text('supersedes_id').unique().references(self),
   amendReason: text('amend_reason'),
-  isWithdrawn: integer('is_withdrawn', { mode: 'boolean' }).notNull().default(sql`0`),
-  episodeId: text('episode_id').notNull().references(() => episodes.id, { onDelete: 'restrict' }),
+  isWithdrawn: integer('is_withdrawn', { mode: 'boolean' })
+    .notNull()
+    .default(sql`0`),
+  episodeId: text('episode_id')
+    .notNull()
+    .references(() => episodes.id, { onDelete: 'restrict' }),
   /** The unit that the patient was in when it was observed. */
-  unitId: text('unit_id').notNull().references(() => units.id, { onDelete: 'restrict' }),
+  unitId: text('unit_id')
+    .notNull()
+    .references(() => units.id, { onDelete: 'restrict' }),
   /** Calendar day in the unit's time zone, yyyy-mm-dd. */
   ventilatorDay: text('ventilator_day').notNull(),
   observedAt: integer('observed_at').notNull(),
   recordedAt: integer('recorded_at').notNull(),
-  recordedBy: text('recorded_by').notNull().references(() => people.id, { onDelete: 'restrict' }),
-  protocolVersionId: text('protocol_version_id').notNull().references(() => protocolVersions.id, { onDelete: 'restrict' }),
+  recordedBy: text('recorded_by')
+    .notNull()
+    .references(() => people.id, { onDelete: 'restrict' }),
+  protocolVersionId: text('protocol_version_id')
+    .notNull()
+    .references(() => protocolVersions.id, { onDelete: 'restrict' }),
 })

@@ -63,7 +63,15 @@ export const ALLOWED_BY_OPENING: readonly Action[] = ['patient.read']
 
 /** The action that the form of each owed step asks for. */
 export const STEP_ACTIONS = {
-  screen: 'screen.record', complete_screen: 'screen.record', hold: 'hold.start', observe_hold: 'hold.observe', end_hold: 'hold.end',
-  start_trial: 'trial.start', observe_trial: 'trial.observe', end_trial: 'trial.end', decide: 'decision.sign',
-  decide_again: 'decision.sign', extubate: 'episode.end',
+  screen: 'screen.record',
+  complete_screen: 'screen.record',
+  hold: 'hold.start',
+  observe_hold: 'hold.observe',
+  end_hold: 'hold.end',
+  start_trial: 'trial.start',
+  observe_trial: 'trial.observe',
+  end_trial: 'trial.end',
+  decide: 'decision.sign',
+  decide_again: 'decision.sign',
+  extubate: 'episode.end',
 } as const satisfies Record<string, Action>

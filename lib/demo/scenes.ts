@@ -102,7 +102,7 @@ export const SCENES = {
         atMs: ago(55),
         choice: 'not_today',
         reasons: ['secretions', 'mental_state'],
-        lookAgainMs: at(0) + 26 * 60 * MINUTE_MS,
+        lookAgainMs: at(0) + 32 * 60 * MINUTE_MS,
       },
     }),
   }),

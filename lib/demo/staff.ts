@@ -25,7 +25,7 @@ const SIGN_INS: Post[] = [
 const colleagues = (role: ClinicalRole, works: Works, count: number): Post[] =>
   Array.from({ length: count }, () => ({ email: '', roles: [role], works, signsIn: null }))
 
-/** The rest of the staff is there as authors of two years of entries; they have no password and cannot sign in. */
+/** The rest of the staff is there as authors of two years of entries; their sign-ins are not printed. */
 function posts(unitCount: number): Post[] {
   const ofUnits = Array.from({ length: unitCount }, (_, unit) => [
     ...colleagues('rt', unit, 2),

@@ -17,7 +17,16 @@ const escapeHtml = (text: string) =>
 /** The same content as plain text and as simple HTML that reads well on a phone and in a screen reader. */
 export function composeMessage(parts: MessageParts): Message {
   const { subject, lead, lines, link, footer } = parts
-  const text = [lead, '', ...lines.map((line) => `- ${line}`), ...(lines.length > 0 ? [''] : []), `${link.label}: ${link.url}`, '', footer, ''].join('\n')
+  const text = [
+    lead,
+    '',
+    ...lines.map((line) => `- ${line}`),
+    ...(lines.length > 0 ? [''] : []),
+    `${link.label}: ${link.url}`,
+    '',
+    footer,
+    '',
+  ].join('\n')
   const items = lines.map((line) => `<li style="margin:0 0 8px">${escapeHtml(line)}</li>`).join('')
   const html = [
     '<!doctype html><html lang="en"><head><meta charset="utf-8"><meta name="viewport" content="width=device-width">',

@@ -9,7 +9,13 @@ const plural = (count: number, one: string, many: string) => `${count} ${count =
 export type BedLine = { bedLabel: string; what: string }
 
 /** The morning list of beds due for screening, to the RT team. */
-export function morningDueMessage(data: { unitName: string; dayText: string; windowText: string; beds: BedLine[]; url: string }): Message {
+export function morningDueMessage(data: {
+  unitName: string
+  dayText: string
+  windowText: string
+  beds: BedLine[]
+  url: string
+}): Message {
   return composeMessage({
     subject: `${data.unitName}: ${plural(data.beds.length, 'screen', 'screens')} due, ${data.dayText}`,
     lead: `${plural(data.beds.length, 'patient is', 'patients are')} due for the daily screen in ${data.unitName} today, ${data.windowText}.`,
@@ -20,7 +26,13 @@ export function morningDueMessage(data: { unitName: string; dayText: string; win
 }
 
 /** Still unscreened when the window closed, to the RT team and the unit lead. */
-export function windowEndMessage(data: { unitName: string; dayText: string; closedText: string; beds: BedLine[]; url: string }): Message {
+export function windowEndMessage(data: {
+  unitName: string
+  dayText: string
+  closedText: string
+  beds: BedLine[]
+  url: string
+}): Message {
   return composeMessage({
     subject: `${data.unitName}: ${plural(data.beds.length, 'patient', 'patients')} not screened by ${data.closedText}, ${data.dayText}`,
     lead: `The screening window of ${data.unitName} closed at ${data.closedText}. Without a complete screen:`,
@@ -31,7 +43,13 @@ export function windowEndMessage(data: { unitName: string; dayText: string; clos
 }
 
 /** A passed trial without a decision, to the physicians of the unit. */
-export function decisionOwedMessage(data: { unitName: string; bedLabel: string; passedText: string; dayText: string; url: string }): Message {
+export function decisionOwedMessage(data: {
+  unitName: string
+  bedLabel: string
+  passedText: string
+  dayText: string
+  url: string
+}): Message {
   return composeMessage({
     subject: `${data.unitName}: decision owed, bed ${data.bedLabel}, ${data.dayText}`,
     lead: `Bed ${data.bedLabel} in ${data.unitName}: the breathing trial was recorded as passed at ${data.passedText}, and no decision has been signed yet.`,

@@ -9,7 +9,11 @@ import type { DecisionChoice } from '@/lib/weaning/vocabulary'
 export type BedsideFormDto = Omit<StepFormDto, 'seenLatestId'>
 
 /** `latest` holds the settings last observed, to be taken over with one tap; `amending` the version to correct. */
-export type SettingsFormDto = BedsideFormDto & { latest: SettingsDto | null; amending: SettingsDto | null; may: { record: boolean } }
+export type SettingsFormDto = BedsideFormDto & {
+  latest: SettingsDto | null
+  amending: SettingsDto | null
+  may: { record: boolean }
+}
 export type GasFormDto = BedsideFormDto & { amending: GasDto | null; may: { record: boolean } }
 export type AirwayFormDto = BedsideFormDto & { amending: AirwayEventDto | null; may: { record: boolean } }
 

@@ -8,7 +8,10 @@ export const mailOneSchema = z.object({ unitId: z.string().min(1), mailId: z.str
 export const saveMailScheduleSchema = z.object({
   unitId: z.string().min(1),
   version: z.number().int(),
-  morningTime: z.string().regex(/^([01]\d|2[0-3]):[0-5]\d$/, 'Give the time on the 24-hour clock, such as 05:00.').nullable(),
+  morningTime: z
+    .string()
+    .regex(/^([01]\d|2[0-3]):[0-5]\d$/, 'Give the time on the 24-hour clock, such as 05:00.')
+    .nullable(),
   isWindowEndOn: z.boolean(),
   isDecisionOwedOn: z.boolean(),
 })

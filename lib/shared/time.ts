@@ -22,11 +22,11 @@ export function shiftDay(day: string, days: number): string {
 export function wallClockMoments(day: string, minutesAfterMidnight: number, timeZone: string): number[] {
   const [year = 0, month = 1, date = 1] = day.split('-').map(Number)
   const asUtc = Date.UTC(year, month - 1, date, 0, minutesAfterMidnight)
-  const offsets = [asUtc - 24 * HOUR_MS, asUtc + 24 * HOUR_MS].map((ms) => new TZDate(ms, timeZone).getTimezoneOffset() * MINUTE_MS)
+  const offsets = [asUtc - 24 * HOUR_MS, asUtc + 24 * HOUR_MS].map(
+    (ms) => new TZDate(ms, timeZone).getTimezoneOffset() * MINUTE_MS,
+  )
   const moments = [...new Set(offsets)].map((offset) => asUtc + offset)
-  return moments
-    .filter((ms) => new TZDate(ms, timeZone).getTimezoneOffset() * MINUTE_MS === ms - asUtc)
-    .sort((a, b) => a - b)
+  return moments.filter((ms) => new TZDate(ms, timeZone).getTimezoneOffset() * MINUTE_MS === ms - asUtc).sort((a, b) => a - b)
 }
 
 /** The one moment for a scheduled wall-clock time: the first of a doubled one; a skipped one moves forward by the hour that was skipped. */

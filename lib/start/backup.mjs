@@ -1,5 +1,5 @@
 // npm run backup: a consistent copy of the running database, opened and checked before it counts.
-import { existsSync, mkdirSync, renameSync, rmSync } from 'node:fs'
+import { chmodSync, existsSync, mkdirSync, renameSync, rmSync } from 'node:fs'
 import { join, resolve } from 'node:path'
 import { main, Refusal, ROOT, say } from './process.mjs'
 import { setup } from './setup.mjs'
@@ -48,6 +48,7 @@ export async function backUp(Database, source, folder, now = new Date()) {
     await copyDatabase(Database, source, unchecked)
     const { problems, counts } = checkDatabase(Database, unchecked)
     if (problems.length > 0) throw new Refusal(`The copy is not sound and was removed: ${problems.join('; ')}`)
+    chmodSync(unchecked, 0o600)
     renameSync(unchecked, file)
     return { file, counts }
   } catch (error) {

@@ -7,7 +7,19 @@ import { hashFiles, isStamped, removeStamp, writeStamp } from './stamp.mjs'
 
 /** What the build reads. Tests and these scripts are no part of it. */
 const SOURCES = [
-  ...['app', 'components', 'db', 'jobs', 'lib/access', 'lib/client', 'lib/demo', 'lib/mail', 'lib/schemas', 'lib/server', 'lib/services'],
+  ...[
+    'app',
+    'components',
+    'db',
+    'jobs',
+    'lib/access',
+    'lib/client',
+    'lib/demo',
+    'lib/mail',
+    'lib/schemas',
+    'lib/server',
+    'lib/services',
+  ],
   ...['lib/shared', 'lib/statistics', 'lib/weaning', 'public', 'instrumentation.ts', 'proxy.ts', 'next.config.mjs'],
   ...['postcss.config.mjs', 'tailwind.config.ts', 'tsconfig.json', 'package-lock.json'],
 ]

@@ -1,9 +1,11 @@
 // Part of npm run check: every path that the documents name in backticks exists.
 import { existsSync, readFileSync } from 'node:fs'
-import { join } from 'node:path'
+import { basename, join } from 'node:path'
 import { main, Refusal, ROOT, say } from './process.mjs'
+import { listFiles } from './stamp.mjs'
 
 const DOCUMENTS = ['README.md', 'DEVELOPERS.md']
+const OUR_FOLDERS = ['app', 'components', 'db', 'jobs', 'lib', 'tests']
 const TOP = /^(app|components|db|jobs|lib|tests|public|docs|\.ci)(\/|$)/
 /** A file at the root, by the endings that ours have. Made at run time, so absent from a fresh checkout: data and .env. */
 const ROOT_FILE = /^[A-Za-z.-]+\.(ts|mts|mjs|cjs|json|md|example)$/
@@ -18,9 +20,11 @@ export function namedPaths(text) {
     .filter((path) => path !== '')
 }
 
-/** The named paths that do not exist below the root. */
+/** The named paths that do not exist below the root. A bare file name, as in a list under its folder, may stand in any of ours. */
 export function missingPaths(text, root) {
-  return [...new Set(namedPaths(text))].filter((path) => !existsSync(join(root, path)))
+  const names = new Set(listFiles(root, OUR_FOLDERS).map((path) => basename(path)))
+  const isThere = (path) => existsSync(join(root, path)) || (!path.includes('/') && names.has(path))
+  return [...new Set(namedPaths(text))].filter((path) => !isThere(path))
 }
 
 async function checkDocPaths() {

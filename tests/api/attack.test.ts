@@ -569,12 +569,19 @@ describe('the session', () => {
     const idle = makeSession(scene.db, rt.id, { createdAt: now - HOUR_MS, lastActiveAt: now - 16 * MINUTE_MS })
     const expired = makeSession(scene.db, rt.id, { createdAt: now - 12 * HOUR_MS, lastActiveAt: now })
     const gone = makeSession(scene.db, deactivated.id)
+    const runOut = makeSession(scene.db, rt.id)
+    scene.db
+      .update(session)
+      .set({ expiresAt: new Date(now - 1) })
+      .where(eq(session.id, runOut.sessionId))
+      .run()
     for (const headers of [{}, smuggled]) {
       expect((await read(scene, '', headers)).status).toBe(401)
       expect((await read(scene, locked.cookie, headers)).status).toBe(423)
       expect((await read(scene, idle.cookie, headers)).status).toBe(423)
       expect((await read(scene, expired.cookie, headers)).status).toBe(401)
       expect((await read(scene, gone.cookie, headers)).status).toBe(401)
+      expect((await read(scene, runOut.cookie, headers)).status).toBe(401)
     }
     const states = scene.db.select().from(sessionStates).all()
     expect(states.find(({ sessionId }) => sessionId === idle.sessionId)?.lastActiveAt).toBe(now - 16 * MINUTE_MS)

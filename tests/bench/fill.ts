@@ -7,7 +7,9 @@ const [file = '', beds = '28', historyDays = '730', password = ''] = process.arg
 const db = openDatabase(file)
 migrateDatabase(db)
 const ctx = { actor: { kind: 'system' as const }, now: Date.now(), requestId: newId(), db, idempotencyKey: null }
-const units = [{ name: 'Bench ICU', prefix: 'B', beds: Number(beds), historyBeds: Math.min(28, Number(beds)), isEveryBedVentilated: true }]
+const units = [
+  { name: 'Bench ICU', prefix: 'B', beds: Number(beds), historyBeds: Math.min(28, Number(beds)), isEveryBedVentilated: true },
+]
 const filled = await fillDemo(ctx, { password, historyDays: Number(historyDays), units })
 db.$client.exec('analyze')
 db.$client.close()

@@ -5,7 +5,13 @@ import { newId } from '@/lib/shared/ids'
 // Times the Today verb, and the same rows read raw through better-sqlite3, in this one process. Prints JSON.
 const db = openDatabase(process.argv[2] ?? '')
 const unitId = String(db.$client.prepare('select id from units limit 1').pluck().get())
-const ctx = () => ({ actor: { kind: 'job' as const, name: 'bench' }, now: Date.now(), requestId: newId(), db, idempotencyKey: null })
+const ctx = () => ({
+  actor: { kind: 'job' as const, name: 'bench' },
+  now: Date.now(),
+  requestId: newId(),
+  db,
+  idempotencyKey: null,
+})
 
 const TABLES = ['screens', 'holds', 'hold_observations', 'hold_ends', 'trials', 'trial_observations', 'trial_ends', 'decisions']
 const today = listToday(ctx(), { unitId })
@@ -14,12 +20,18 @@ const among = ids.map(() => '?').join(',')
 const patients = db.$client.prepare(
   'select * from stays join patients on patients.id = stays.patient_id join beds on beds.id = stays.bed_id where stays.unit_id = ? and stays.ended_at is null',
 )
-const entries = TABLES.map((table) => db.$client.prepare(`select * from ${table} where episode_id in (${among}) and ventilator_day >= ?`))
+const entries = TABLES.map((table) =>
+  db.$client.prepare(`select * from ${table} where episode_id in (${among}) and ventilator_day >= ?`),
+)
 const settings = db.$client.prepare(`select *, max(observed_at) from settings where episode_id in (${among}) group by episode_id`)
 const since = new Date(Date.parse(today.day) - 86_400_000).toISOString().slice(0, 10)
 
 function readRaw(): number {
-  return patients.all(unitId).length + settings.all(...ids).length + entries.reduce((sum, one) => sum + one.all(...ids, since).length, 0)
+  return (
+    patients.all(unitId).length +
+    settings.all(...ids).length +
+    entries.reduce((sum, one) => sum + one.all(...ids, since).length, 0)
+  )
 }
 
 /** Median milliseconds of one call, over about two seconds. */
@@ -34,11 +46,13 @@ function medianMs(work: () => unknown): number {
   return times.sort((a, b) => a - b)[Math.floor(times.length / 2)] ?? NaN
 }
 
-console.log(JSON.stringify({
-  rows: today.rows.length,
-  bytes: JSON.stringify(today).length,
-  todayMs: medianMs(() => listToday(ctx(), { unitId })),
-  todayWithJsonMs: medianMs(() => JSON.stringify(listToday(ctx(), { unitId }))),
-  rawRows: readRaw(),
-  rawMs: medianMs(readRaw),
-}))
+console.log(
+  JSON.stringify({
+    rows: today.rows.length,
+    bytes: JSON.stringify(today).length,
+    todayMs: medianMs(() => listToday(ctx(), { unitId })),
+    todayWithJsonMs: medianMs(() => JSON.stringify(listToday(ctx(), { unitId }))),
+    rawRows: readRaw(),
+    rawMs: medianMs(readRaw),
+  }),
+)

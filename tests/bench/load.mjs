@@ -12,7 +12,8 @@ export async function compareThroughput({ address, cookie }, paths, { rounds = 5
   for (let round = 0; round < rounds; round += 1) {
     for (const [name, path] of Object.entries(paths)) {
       const result = await ask(address + path, cookie, { duration: seconds })
-      if (result.non2xx > 0 || result.errors > 0) throw new Error(`${path} answered ${result.non2xx} refusals and ${result.errors} errors.`)
+      if (result.non2xx > 0 || result.errors > 0)
+        throw new Error(`${path} answered ${result.non2xx} refusals and ${result.errors} errors.`)
       seen[name].push(result.requests.average)
     }
   }

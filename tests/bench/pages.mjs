@@ -2,13 +2,30 @@
 import { gzipSync } from 'node:zlib'
 import { chromium } from '@playwright/test'
 
-const FLAGS = ['--no-sandbox', '--disable-gpu', '--disable-quic', '--no-first-run', '--disable-background-networking', '--disable-component-update', '--disable-sync']
+const FLAGS = [
+  '--no-sandbox',
+  '--disable-gpu',
+  '--disable-quic',
+  '--no-first-run',
+  '--disable-background-networking',
+  '--disable-component-update',
+  '--disable-sync',
+]
 
 /** Opens a browser that is signed in. */
 async function openBrowser({ address, cookie }) {
   const browser = await chromium.launch({ executablePath: process.env.DAYBREATH_CHROMIUM ?? '/usr/bin/chromium', args: FLAGS })
-  const cookies = cookie.split('; ').map((pair) => ({ name: pair.slice(0, pair.indexOf('=')), value: pair.slice(pair.indexOf('=') + 1), url: address }))
-  return { browser, newContext: async () => { const context = await browser.newContext(); await context.addCookies(cookies); return context } }
+  const cookies = cookie
+    .split('; ')
+    .map((pair) => ({ name: pair.slice(0, pair.indexOf('=')), value: pair.slice(pair.indexOf('=') + 1), url: address }))
+  return {
+    browser,
+    newContext: async () => {
+      const context = await browser.newContext()
+      await context.addCookies(cookies)
+      return context
+    },
+  }
 }
 
 /** Compressed script of each page in kB (1,000 bytes), everything that is loaded until the page is quiet. */
@@ -20,7 +37,11 @@ export async function scriptPerPage(server, paths) {
     const page = await context.newPage()
     const scripts = new Map()
     page.on('response', async (response) => {
-      if (new URL(response.url()).pathname.endsWith('.js')) scripts.set(response.url(), response.body().catch(() => Buffer.alloc(0)))
+      if (new URL(response.url()).pathname.endsWith('.js'))
+        scripts.set(
+          response.url(),
+          response.body().catch(() => Buffer.alloc(0)),
+        )
     })
     const answer = await page.goto(server.address + path)
     if (!answer.ok()) throw new Error(`${path} answered ${answer.status()}.`)
@@ -44,7 +65,9 @@ export async function timeToToday(server, path) {
       const from = performance.now()
       await page.goto(server.address + path, { waitUntil: 'commit' })
       await page.getByRole('main').getByRole('link').first().waitFor()
-      await page.waitForFunction(() => Object.keys(document.querySelector('main button') ?? {}).some((key) => key.startsWith('__react')))
+      await page.waitForFunction(() =>
+        Object.keys(document.querySelector('main button') ?? {}).some((key) => key.startsWith('__react')),
+      )
       times[kind].push(performance.now() - from)
     }
     await context.close()

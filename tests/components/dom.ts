@@ -1,6 +1,7 @@
 /** What stands in a text field. */
 export function valueOf(element: HTMLElement): string {
-  if (!(element instanceof HTMLInputElement || element instanceof HTMLTextAreaElement || element instanceof HTMLSelectElement)) throw new Error('not a field')
+  if (!(element instanceof HTMLInputElement || element instanceof HTMLTextAreaElement || element instanceof HTMLSelectElement))
+    throw new Error('not a field')
   return element.value
 }
 

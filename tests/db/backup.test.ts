@@ -1,4 +1,4 @@
-import { existsSync, readdirSync, readFileSync, writeFileSync } from 'node:fs'
+import { existsSync, readdirSync, readFileSync, statSync, writeFileSync } from 'node:fs'
 import { join } from 'node:path'
 import Database from 'better-sqlite3'
 import { describe, expect, it } from 'vitest'
@@ -21,6 +21,7 @@ describe('backup', () => {
     const { db, file, backups } = makeSource()
     const { file: copy, counts } = await backUp(Database, file, backups, NOW)
     expect(copy).toBe(join(backups, '2026-03-03T08-00-00Z.db'))
+    expect(statSync(copy).mode & 0o777).toBe(0o600)
     expect(counts).toMatchObject({ patients: 2, screens: 2, decisions: 2, audit_log: 2 })
     expect(readdirSync(backups)).toEqual(['2026-03-03T08-00-00Z.db'])
     const opened = new Database(copy, { readonly: true })

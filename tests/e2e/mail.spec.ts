@@ -1,4 +1,4 @@
-import { clockAgo, field, form } from './support/forms'
+import { clockAgo, field, form, moveLink } from './support/forms'
 import { countMail, linkOf, waitForMail } from './support/mailbox'
 import { baseUrlOf, PASSWORD, PEOPLE } from './support/places'
 import { expect, test, UNAUTHENTICATED_401 } from './support/test'
@@ -83,6 +83,6 @@ test('the morning list comes by mail when its time has come, names beds only, an
   await signIn.getByLabel('Password', { exact: true }).fill(PASSWORD)
   await signIn.getByRole('button', { name: 'Sign in' }).click()
   await expect(page).toHaveURL(new RegExp(`/units/${ward.unitId}/today$`))
-  await expect(page.getByRole('link', { name: `RT · screen, bed ${unscreened.bed}` })).toBeVisible()
+  await expect(moveLink(page, 'RT · screen', unscreened.bed)).toBeVisible()
   expect(await countMail(PEOPLE.rt.email, /screens? due/)).toBe(1)
 })

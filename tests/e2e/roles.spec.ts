@@ -1,5 +1,5 @@
 import { readFileSync } from 'node:fs'
-import { choose, clockAgo, field, fill, form, observedAgo } from './support/forms'
+import { choose, clockAgo, field, fill, form, moveLink, observedAgo } from './support/forms'
 import { PASSWORD } from './support/places'
 import { expect, REFUSED_422, test } from './support/test'
 
@@ -17,10 +17,10 @@ test('a respiratory therapist screens a patient in the morning and runs a breath
   const page = await openAs('rt')
   await page.goto('/')
   await expect(page).toHaveURL(new RegExp(`/units/${ward.unitId}/today$`))
-  await page.getByRole('link', { name: `RT · screen, bed ${bed}` }).click()
+  await moveLink(page, 'RT · screen', bed).click()
 
   const screen = form(page, 'Daily screen')
-  await fill(screen, { FiO2: '0.40', PEEP: '6' })
+  await fill(screen, { FiO2: '0.40', PEEP: '5' })
   await expect(screen.getByRole('status', { name: 'Verdict as typed so far' })).toContainText('Incomplete')
   await field(screen.getByRole('group', { name: 'Norepinephrine' }), 'Norepinephrine dose, 0 when none runs').fill('0')
   await choose(screen, 'Other vasopressor', 'no')
@@ -42,7 +42,7 @@ test('a respiratory therapist screens a patient in the morning and runs a breath
   expect(answer.status()).toBe(200)
 
   await page.goto(`/units/${ward.unitId}/today`)
-  await page.getByRole('link', { name: `RT · start trial, bed ${bed}` }).click()
+  await moveLink(page, 'RT · start trial', bed).click()
   const start = form(page, 'Start of the breathing trial')
   await choose(start, 'Technique', 'Pressure support with PEEP')
   await fill(start, {
@@ -81,7 +81,7 @@ test('a nurse holds sedation: safety screen, RASS as it wears off, outcome, rest
   const { patientId, bed } = ward.patients.nurse
   const page = await openAs('nurse')
   await page.goto(`/units/${ward.unitId}/today`)
-  await page.getByRole('link', { name: `Nurse · start sedation hold, bed ${bed}` }).click()
+  await moveLink(page, 'Nurse · start sedation hold', bed).click()
 
   const start = form(page, 'Sedation hold')
   await choose(start, 'Sedation', 'Continuous sedation is running')
@@ -123,7 +123,7 @@ test('a physician documents and signs the decision', async ({ openAs, ward, comp
   const { bed, patientId } = ward.patients.physician
   const page = await openAs('physician')
   await page.goto(`/units/${ward.unitId}/today`)
-  await page.getByRole('link', { name: `Physician · decide, bed ${bed}` }).click()
+  await moveLink(page, 'Physician · decide', bed).click()
   await expect(page.getByRole('heading', { name: 'Decision', level: 1 })).toBeVisible()
   await expect(page.getByRole('main')).toContainText('50') // RSBI of the trial: 20 / 0.400 L
 
@@ -159,7 +159,7 @@ test('a unit lead reads the trend, takes it as a file, drafts the protocol for a
 }) => {
   const page = await openAs('lead')
   await page.goto(`/units/${ward.unitId}/review`)
-  const days = page.getByRole('region', { name: 'Ventilator days' })
+  const days = page.getByRole('region', { name: 'Ventilator days', exact: true })
   await expect(days.getByRole('img', { name: /Chart of Ventilator days by month/ })).toBeVisible()
   await days.getByText('Table', { exact: true }).click()
   await expect(days.getByRole('table')).toBeVisible()

@@ -1,5 +1,5 @@
 import type { Page } from '@playwright/test'
-import { choose, field, fill, form, observedAgo } from './support/forms'
+import { choose, field, fill, form, moveLink, observedAgo } from './support/forms'
 import { PASSWORD } from './support/places'
 import { expect, test } from './support/test'
 
@@ -42,9 +42,9 @@ test('four people carry one patient through the day, and each sees the others’
   for (const page of [physician, lead]) await expect(rowOn(page)).toContainText('RT · screen')
 
   await test.step('the RT screens', async () => {
-    await rt.getByRole('link', { name: `RT · screen, bed ${bed}` }).click()
+    await moveLink(rt, 'RT · screen', bed).click()
     const screen = form(rt, 'Daily screen')
-    await fill(screen, { FiO2: '0.40', PEEP: '6' })
+    await fill(screen, { FiO2: '0.40', PEEP: '5' })
     await field(screen, 'Norepinephrine dose, 0 when none runs').fill('0')
     await choose(screen, 'Other vasopressor', 'no')
     await choose(screen, 'Active ischaemia in 24 h', 'no')

@@ -31,5 +31,11 @@ export async function startSmtpServer() {
   const address = server.server.address()
   const port = typeof address === 'object' && address ? address.port : 0
   onTestFinished(() => new Promise<void>((resolve) => server.close(() => resolve())))
-  return { url: `smtp://127.0.0.1:${port}`, received, behave: (next: Behaviour) => { behaviour = next } }
+  return {
+    url: `smtp://127.0.0.1:${port}`,
+    received,
+    behave: (next: Behaviour) => {
+      behaviour = next
+    },
+  }
 }

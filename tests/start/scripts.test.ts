@@ -99,7 +99,8 @@ describe('paths in documents', () => {
   })
 
   it('are missed when they do not exist', () => {
-    expect(missingPaths('`lib/start/setup.mjs` `lib/start/gone.mjs` `gone.json`', '.')).toEqual([
+    expect(missingPaths('`lib/start/setup.mjs` `policy.ts` `lib/policy.ts` `lib/start/gone.mjs` `gone.json`', '.')).toEqual([
+      'lib/policy.ts',
       'lib/start/gone.mjs',
       'gone.json',
     ])

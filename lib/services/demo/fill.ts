@@ -55,10 +55,10 @@ function refuseFilled(ctx: Ctx): void {
   throw new AppError('PRECONDITION', 'This database holds a hospital already. The demo fills an empty database only.')
 }
 
-/** The sign-in rows as better-auth keeps them. */
-function makeSignIns({ accounts }: Demo, hash: string, now: number): SeedRows['account'] {
+/** The sign-in rows as better-auth keeps them: for everybody, so that nobody stands on the people page as invited and not come. */
+function makeSignIns({ rows }: Demo, hash: string, now: number): SeedRows['account'] {
   const at = new Date(now)
-  return accounts.map(({ personId }) => ({
+  return rows.people.map(({ id: personId }) => ({
     id: newId(),
     accountId: personId,
     providerId: 'credential',

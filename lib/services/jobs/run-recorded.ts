@@ -23,7 +23,13 @@ export async function runRecorded(job: RecordedJob): Promise<boolean> {
   const db = requestDatabase()
   if (!job.isQuiet) insertJobRun(db, { id, job: job.name, startedAt })
   try {
-    const answer = await job.run({ actor: { kind: 'job', name: job.name }, now: startedAt, requestId: id, db, idempotencyKey: null })
+    const answer = await job.run({
+      actor: { kind: 'job', name: job.name },
+      now: startedAt,
+      requestId: id,
+      db,
+      idempotencyKey: null,
+    })
     const detail = JSON.stringify(answer ?? null)
     if (!job.isQuiet) endJobRun(db, id, { endedAt: Date.now(), result: 'ok', detail })
     else if (/[1-9]/.test(detail)) insertJobRun(db, { id, job: job.name, startedAt, endedAt: Date.now(), result: 'ok', detail })

@@ -24,7 +24,12 @@ export async function deliverMail(ctx: Ctx, transport: MailTransport, from: stri
     const claimed = claimNext(ctx, clock())
     if (!claimed) break
     const result = await transport.deliver({
-      from, to: claimed.recipient, subject: claimed.subject, text: claimed.bodyText, html: claimed.bodyHtml, messageId: claimed.messageId,
+      from,
+      to: claimed.recipient,
+      subject: claimed.subject,
+      text: claimed.bodyText,
+      html: claimed.bodyHtml,
+      messageId: claimed.messageId,
       at: claimed.queuedAt,
     })
     counts[result.outcome] += 1
@@ -35,17 +40,23 @@ export async function deliverMail(ctx: Ctx, transport: MailTransport, from: stri
 
 function markUnconfirmed(ctx: Ctx): void {
   for (const row of listStaleClaims(ctx.db, ctx.now - STALE_CLAIM_MS)) {
-    updateMail(ctx.db, row, { state: 'unconfirmed', lastError: 'The program stopped while this was being sent. It may or may not have arrived.' })
+    updateMail(ctx.db, row, {
+      state: 'unconfirmed',
+      lastError: 'The program stopped while this was being sent. It may or may not have arrived.',
+    })
   }
 }
 
 function claimNext(ctx: Ctx, now: number): MailRow | null {
-  return ctx.db.transaction((tx) => {
-    const row = findNextQueuedMail(tx, now)
-    if (!row) return null
-    const change = { state: 'sending', claimedAt: now, attempts: row.attempts + 1 } as const
-    return updateMail(tx, row, change) ? { ...row, ...change } : null
-  }, { behavior: 'immediate' })
+  return ctx.db.transaction(
+    (tx) => {
+      const row = findNextQueuedMail(tx, now)
+      if (!row) return null
+      const change = { state: 'sending', claimedAt: now, attempts: row.attempts + 1 } as const
+      return updateMail(tx, row, change) ? { ...row, ...change } : null
+    },
+    { behavior: 'immediate' },
+  )
 }
 
 const LINK_REMOVED = 'The one-time link was removed from the ledger when the message left.'

@@ -29,14 +29,21 @@ export function dueMessages(today: TodayDto, content: ProtocolContent, schedule:
     const fromMs = wallClockMs(day, schedule.morningDueMin, unit.timeZone)
     if (nowMs >= fromMs && nowMs < closesMs) {
       const windowText = `between ${formatMinutes(opensMin)} and ${formatMinutes(closesMin)}`
-      due.push({ kind: 'morning_due', occasion: day, toRoles: ['rt'], message: morningDueMessage({ ...shared, windowText, beds }) })
+      due.push({
+        kind: 'morning_due',
+        occasion: day,
+        toRoles: ['rt'],
+        message: morningDueMessage({ ...shared, windowText, beds }),
+      })
     }
   }
   if (schedule.isWindowEndOn && beds.length > 0 && nowMs >= closesMs && nowMs < closesMs + WINDOW_END_USEFUL_MS) {
     const message = windowEndMessage({ ...shared, closedText: formatMinutes(closesMin), beds })
     due.push({ kind: 'window_end', occasion: day, toRoles: ['rt', 'unit_lead'], message })
   }
-  return schedule.isDecisionOwedOn ? [...due, ...today.rows.flatMap((row) => decisionOwed(row, shared, unit.timeZone, nowMs))] : due
+  return schedule.isDecisionOwedOn
+    ? [...due, ...today.rows.flatMap((row) => decisionOwed(row, shared, unit.timeZone, nowMs))]
+    : due
 }
 
 function isUnscreened(row: TodayRowDto): boolean {
@@ -48,9 +55,18 @@ function toBedLine(row: TodayRowDto): BedLine {
   return { bedLabel: row.bedLabel, what: isStarted ? 'complete the screen' : 'screen' }
 }
 
-function decisionOwed(row: TodayRowDto, shared: { unitName: string; dayText: string; url: string }, timeZone: string, nowMs: number): DueMessage[] {
+function decisionOwed(
+  row: TodayRowDto,
+  shared: { unitName: string; dayText: string; url: string },
+  timeZone: string,
+  nowMs: number,
+): DueMessage[] {
   const { move } = row
   if (move.kind !== 'move' || move.step !== 'decide' || !move.isOverdue) return []
-  const message = decisionOwedMessage({ ...shared, bedLabel: row.bedLabel, passedText: formatTime(move.sinceMs, timeZone, nowMs) })
+  const message = decisionOwedMessage({
+    ...shared,
+    bedLabel: row.bedLabel,
+    passedText: formatTime(move.sinceMs, timeZone, nowMs),
+  })
   return [{ kind: 'decision_owed', occasion: `${row.episodeId}:${move.sinceMs}`, toRoles: ['physician'], message }]
 }

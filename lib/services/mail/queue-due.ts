@@ -27,15 +27,18 @@ export function queueDueMail(ctx: Ctx): { queued: number } {
 }
 
 function queueForUnit(ctx: Ctx, unitId: string, day: string, due: DueMessage[]): number {
-  return ctx.db.transaction((tx) => {
-    let queued = 0
-    for (const { kind, occasion, toRoles, message } of due) {
-      // A daily list is a picture of one moment: who joins the team later that day does not get an older or another one.
-      if (kind !== 'decision_owed' && hasMailOfDay(tx, unitId, kind, day)) continue
-      for (const { personId, email } of listMailRecipients(tx, unitId, toRoles)) {
-        if (queueMessage(tx, { kind, unitId, day, occasion, personId, recipient: email, now: ctx.now }, message)) queued += 1
+  return ctx.db.transaction(
+    (tx) => {
+      let queued = 0
+      for (const { kind, occasion, toRoles, message } of due) {
+        // A daily list is a picture of one moment: who joins the team later that day does not get an older or another one.
+        if (kind !== 'decision_owed' && hasMailOfDay(tx, unitId, kind, day)) continue
+        for (const { personId, email } of listMailRecipients(tx, unitId, toRoles)) {
+          if (queueMessage(tx, { kind, unitId, day, occasion, personId, recipient: email, now: ctx.now }, message)) queued += 1
+        }
       }
-    }
-    return queued
-  }, { behavior: 'immediate' })
+      return queued
+    },
+    { behavior: 'immediate' },
+  )
 }

@@ -25,7 +25,19 @@ export function queueMessage(tx: Tx, envelope: Envelope, message: Message): bool
   // The same Message-ID whenever it is sent again, so that a receiver can tell a repeat.
   const messageId = `<${createHash('sha256').update(onceKey).digest('hex').slice(0, 32)}@daybreath>`
   return insertMailOnce(tx, {
-    id: newId(), onceKey, unitId, kind, day, personId, recipient, messageId, state: 'queued', queuedAt: now, nextAttemptAt: now,
-    subject: message.subject, bodyText: message.text, bodyHtml: message.html,
+    id: newId(),
+    onceKey,
+    unitId,
+    kind,
+    day,
+    personId,
+    recipient,
+    messageId,
+    state: 'queued',
+    queuedAt: now,
+    nextAttemptAt: now,
+    subject: message.subject,
+    bodyText: message.text,
+    bodyHtml: message.html,
   })
 }

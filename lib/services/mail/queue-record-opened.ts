@@ -13,8 +13,18 @@ type OpenedMail = { unit: { id: string; name: string; timeZone: string }; bedLab
 export function queueRecordOpenedMail(tx: Tx, { unit, bedLabel, openingId, now }: OpenedMail): void {
   const message = recordOpenedMessage({ unitName: unit.name, bedLabel, url: `${readEnv().baseUrl}/units/${unit.id}/openings` })
   for (const { personId, email } of listMailRecipients(tx, unit.id, ['unit_lead'])) {
-    queueMessage(tx, {
-      kind: 'record_opened', unitId: unit.id, day: localDay(now, unit.timeZone), occasion: openingId, personId, recipient: email, now,
-    }, message)
+    queueMessage(
+      tx,
+      {
+        kind: 'record_opened',
+        unitId: unit.id,
+        day: localDay(now, unit.timeZone),
+        occasion: openingId,
+        personId,
+        recipient: email,
+        now,
+      },
+      message,
+    )
   }
 }

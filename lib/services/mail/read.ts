@@ -18,8 +18,17 @@ export function readMail(ctx: Ctx, input: { unitId: string }): MailPageDto {
   const maySchedule = ctx.actor.kind === 'person' && mayInUnit(ctx.actor.memberships, 'mail.schedule', unit.id)
   const schedule = findMailSchedule(ctx.db, unit.id)
   const entries = listMailOfUnit(ctx.db, unit.id, MOST_ENTRIES).map(({ mail, personName }): MailEntryDto => ({
-    id: mail.id, kind: mail.kind, state: mail.state, personName, recipient: maySchedule ? mail.recipient : null, subject: mail.subject,
-    bodyText: mail.bodyText, attempts: mail.attempts, lastError: mail.lastError, queuedAt: mail.queuedAt, nextAttemptAt: mail.nextAttemptAt,
+    id: mail.id,
+    kind: mail.kind,
+    state: mail.state,
+    personName,
+    recipient: maySchedule ? mail.recipient : null,
+    subject: mail.subject,
+    bodyText: mail.bodyText,
+    attempts: mail.attempts,
+    lastError: mail.lastError,
+    queuedAt: mail.queuedAt,
+    nextAttemptAt: mail.nextAttemptAt,
     sentAt: mail.sentAt,
   }))
   return {
@@ -28,7 +37,9 @@ export function readMail(ctx: Ctx, input: { unitId: string }): MailPageDto {
     isKeptAsFiles: readEnv().smtpUrl === null,
     schedule: schedule
       ? {
-          version: schedule.version, isWindowEndOn: schedule.isWindowEndOn, isDecisionOwedOn: schedule.isDecisionOwedOn,
+          version: schedule.version,
+          isWindowEndOn: schedule.isWindowEndOn,
+          isDecisionOwedOn: schedule.isDecisionOwedOn,
           morningTime: schedule.morningDueMin === null ? null : formatMinutes(schedule.morningDueMin),
         }
       : null,
@@ -38,7 +49,11 @@ export function readMail(ctx: Ctx, input: { unitId: string }): MailPageDto {
   }
 }
 
-function listUpcoming(ctx: Ctx, unit: UnitRow, schedule: { morningDueMin: number | null; isWindowEndOn: boolean }): MailPageDto['upcoming'] {
+function listUpcoming(
+  ctx: Ctx,
+  unit: UnitRow,
+  schedule: { morningDueMin: number | null; isWindowEndOn: boolean },
+): MailPageDto['upcoming'] {
   const upcoming: MailPageDto['upcoming'] = []
   const today = localDay(ctx.now, unit.timeZone)
   const add = (kind: MailKind, minutes: number, toRoles: ClinicalRole[]) => {

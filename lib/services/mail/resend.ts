@@ -16,7 +16,12 @@ export function resendMail(ctx: Ctx, input: { unitId: string; mailId: string }):
       throw new AppError('PRECONDITION', 'Only a message that failed or was not confirmed can be sent again.')
     }
     updateMail(tx, mail, { state: 'queued', attempts: 0, nextAttemptAt: ctx.now, claimedAt: null })
-    writeAudit(tx, ctx, { action: 'mail.resend', unitId: unit.id, subject: { kind: 'mail', id: mail.id }, before: { state: mail.state } })
+    writeAudit(tx, ctx, {
+      action: 'mail.resend',
+      unitId: unit.id,
+      subject: { kind: 'mail', id: mail.id },
+      before: { state: mail.state },
+    })
     return { state: 'queued' }
   })
 }

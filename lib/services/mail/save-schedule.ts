@@ -21,9 +21,18 @@ export function saveMailSchedule(ctx: Ctx, input: SaveMailScheduleInput): { vers
     const before = findMailSchedule(tx, unit.id)
     const change = { morningDueMin, isWindowEndOn: input.isWindowEndOn, isDecisionOwedOn: input.isDecisionOwedOn }
     if (!before || !updateMailSchedule(tx, unit.id, input.version, change)) {
-      throw new AppError('CONFLICT', 'Someone changed the schedule in the meantime. Reload the page to see it; nothing was saved.')
+      throw new AppError(
+        'CONFLICT',
+        'Someone changed the schedule in the meantime. Reload the page to see it; nothing was saved.',
+      )
     }
-    writeAudit(tx, ctx, { action: 'mail.schedule', unitId: unit.id, subject: { kind: 'unit', id: unit.id }, before, after: change })
+    writeAudit(tx, ctx, {
+      action: 'mail.schedule',
+      unitId: unit.id,
+      subject: { kind: 'unit', id: unit.id },
+      before,
+      after: change,
+    })
     return { version: input.version + 1 }
   })
 }

@@ -13,8 +13,25 @@ const formDto = (change: Partial<DecisionFormDto> = {}): DecisionFormDto => {
   const base = stepForm()
   return {
     ...base,
-    evidence: { ventilatorDay: base.ventilatorDay, screen: null, hold: null, trial: null, rsbi: null, settings: base.prefill.settings, gas: null, cough: null, secretions: null },
-    evidenceHash: 'hash-one', missing: ['screen', 'trial', 'gas'], isTrialRunning: false, decisions: [], amending: null, signerName: 'Invented Physician', may: { sign: true }, ...change,
+    evidence: {
+      ventilatorDay: base.ventilatorDay,
+      screen: null,
+      hold: null,
+      trial: null,
+      rsbi: null,
+      settings: base.prefill.settings,
+      gas: null,
+      cough: null,
+      secretions: null,
+    },
+    evidenceHash: 'hash-one',
+    missing: ['screen', 'trial', 'gas'],
+    isTrialRunning: false,
+    decisions: [],
+    amending: null,
+    signerName: 'Invented Physician',
+    may: { sign: true },
+    ...change,
   }
 }
 
@@ -48,12 +65,21 @@ test('shows the sentence that is signed and sends it with the hash of the eviden
   await userEvent.click(screen.getByRole('checkbox', { name: 'Secretions' }))
   await userEvent.type(screen.getByRole('textbox', { name: /Time to look again/ }), '1400')
   await userEvent.type(password(), 'a long enough password')
-  expect(screen.getByText(/I have decided not to extubate this patient today \(reason: secretions\)/).textContent).toContain('Signed by Invented Physician, physician, Medical ICU')
+  expect(screen.getByText(/I have decided not to extubate this patient today \(reason: secretions\)/).textContent).toContain(
+    'Signed by Invented Physician, physician, Medical ICU',
+  )
   await sign()
   await waitFor(() => expect(sent).toHaveLength(1))
   expect(sent[0]).toMatchObject({
     path: '/api/episodes/e1/decisions',
-    body: { choice: 'not_today', reasons: ['secretions'], lookAgain: { day: '2026-12-01', time: '14:00' }, supportAfter: null, seenEvidenceHash: 'hash-one', password: 'a long enough password' },
+    body: {
+      choice: 'not_today',
+      reasons: ['secretions'],
+      lookAgain: { day: '2026-12-01', time: '14:00' },
+      supportAfter: null,
+      seenEvidenceHash: 'hash-one',
+      password: 'a long enough password',
+    },
   })
 })
 
@@ -71,7 +97,14 @@ test('what belongs to another choice is not sent along', async () => {
 
 test('a wrong password is said at its field and nothing typed is lost', async () => {
   const { answers } = open()
-  answers.push(refusal(422, { code: 'INVALID', message: 'Please look at the marked field.', fields: { password: 'This is not your password. Nothing was signed.' }, requestId: 'r' }))
+  answers.push(
+    refusal(422, {
+      code: 'INVALID',
+      message: 'Please look at the marked field.',
+      fields: { password: 'This is not your password. Nothing was signed.' },
+      requestId: 'r',
+    }),
+  )
   await userEvent.click(screen.getByRole('radio', { name: 'Extubate' }))
   await userEvent.click(screen.getByRole('radio', { name: 'Oxygen' }))
   await userEvent.type(screen.getByRole('textbox', { name: 'Note' }), 'awake')
@@ -102,8 +135,16 @@ test('when the record changes while it is read, the page says so, keeps what was
 
 test('a signed decision shows its statement and the beginning of its hash; only a physician signs', () => {
   const decision: DecisionDto = {
-    ...entry('d1', 5), choice: 'extubate', reasons: [], lookAgainAt: null, supportAfter: 'oxygen', steroidsPlanned: null, note: null,
-    statement: 'I have decided to extubate this patient. Signed by Invented Physician, physician, Medical ICU, at 07:31 on 1 Dec 2026.', contentHash: '0123456789abcdef0123',
+    ...entry('d1', 5),
+    choice: 'extubate',
+    reasons: [],
+    lookAgainAt: null,
+    supportAfter: 'oxygen',
+    steroidsPlanned: null,
+    note: null,
+    statement:
+      'I have decided to extubate this patient. Signed by Invented Physician, physician, Medical ICU, at 07:31 on 1 Dec 2026.',
+    contentHash: '0123456789abcdef0123',
   }
   open(formDto({ decisions: [decision], seenLatestId: 'd1', may: { sign: false } }))
   expect(screen.getByText(decision.statement)).toBeTruthy()

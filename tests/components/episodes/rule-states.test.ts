@@ -7,7 +7,18 @@ import { MIN, NOW_MS } from '../step-fixtures'
 
 const clock = (ms: number) => new Date(ms).toISOString().slice(11, 16)
 const rule = (change: Partial<JudgedRuleDto>) =>
-  ({ id: 'r', words: 'respiratory rate above 35 /min for 5 min', source: 'a source', state: 'clear', sinceMs: null, metAtMs: null, reachedAtMs: null, isBeyondNow: false, lastValue: null, ...change }) as JudgedRuleDto
+  ({
+    id: 'r',
+    words: 'respiratory rate above 35 /min for 5 min',
+    source: 'a source',
+    state: 'clear',
+    sinceMs: null,
+    metAtMs: null,
+    reachedAtMs: null,
+    isBeyondNow: false,
+    lastValue: null,
+    ...change,
+  }) as JudgedRuleDto
 
 test('a limit exceeded but not yet long enough says since when, and when to look again', () => {
   const near = rule({ state: 'near', sinceMs: NOW_MS - 3 * MIN, reachedAtMs: NOW_MS + 2 * MIN })
@@ -21,8 +32,29 @@ test('a rule without a value is said to be not judged, never to be within its li
 })
 
 test('a limit beside its value keeps its comparator and duration', () => {
-  expect(shortRule({ kind: 'limit', id: 'a', reading: 'breathsPerMin', limit: { comparator: 'above', value: 35 }, sustainedMin: 5, source: '' })).toBe('limit above 35 for 5 min')
-  expect(shortRule({ kind: 'change', id: 'b', reading: 'heartRatePerMin', direction: 'rise', comparator: 'atLeast', by: 20, as: 'percent', sustainedMin: 0, source: '' })).toBe('limit up 20 % or more')
+  expect(
+    shortRule({
+      kind: 'limit',
+      id: 'a',
+      reading: 'breathsPerMin',
+      limit: { comparator: 'above', value: 35 },
+      sustainedMin: 5,
+      source: '',
+    }),
+  ).toBe('limit above 35 for 5 min')
+  expect(
+    shortRule({
+      kind: 'change',
+      id: 'b',
+      reading: 'heartRatePerMin',
+      direction: 'rise',
+      comparator: 'atLeast',
+      by: 20,
+      as: 'percent',
+      sustainedMin: 0,
+      source: '',
+    }),
+  ).toBe('limit up 20 % or more')
 })
 
 test('the clock counts hours, minutes and seconds, and never below zero', () => {

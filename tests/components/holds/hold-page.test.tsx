@@ -11,13 +11,38 @@ import { serve, show } from '../step-server'
 vi.mock('next/navigation', () => ({ useRouter: () => ({ push: vi.fn() }) }))
 
 const formDto = (change: Partial<HoldFormDto> = {}): HoldFormDto => ({
-  ...stepForm(), latestScreen: null, holds: [], running: null, lastInfusions: null, amending: null, may: { start: true, observe: true, end: true }, ...change,
+  ...stepForm(),
+  latestScreen: null,
+  holds: [],
+  running: null,
+  lastInfusions: null,
+  amending: null,
+  may: { start: true, observe: true, end: true },
+  ...change,
 })
-const observation = (id: string, minutesAgo: number): HoldObservationDto => ({ ...entry(id, minutesAgo), readings: look({ rass: -2, spo2Percent: 95 }), opensEyesToVoice: 'no' })
+const observation = (id: string, minutesAgo: number): HoldObservationDto => ({
+  ...entry(id, minutesAgo),
+  readings: look({ rass: -2, spo2Percent: 95 }),
+  opensEyesToVoice: 'no',
+})
 const running = (observations: HoldObservationDto[] = []): RunningHoldDto => ({
-  ...entry('h1', 40), start: 'started', safety: {}, infusions: [{ drug: 'propofol', rate: 30, unit: 'mg/h', purpose: 'sedation' }, { drug: 'fentanyl', rate: 50, unit: 'µg/h', purpose: 'pain' }],
-  note: null, observations, end: null, rules: [], nextObservationDueMs: NOW_MS - 10 * MIN, toleratedByTimeAtMs: NOW_MS + 200 * MIN, eyesOpenedAtMs: null, isTolerated: false,
-  restartFraction: 0.5, restartsIfNotTolerated: [{ drug: 'propofol', unit: 'mg/h', rateBefore: 30, rate: 15 }],
+  ...entry('h1', 40),
+  start: 'started',
+  safety: {},
+  infusions: [
+    { drug: 'propofol', rate: 30, unit: 'mg/h', purpose: 'sedation' },
+    { drug: 'fentanyl', rate: 50, unit: 'µg/h', purpose: 'pain' },
+  ],
+  note: null,
+  observations,
+  end: null,
+  rules: [],
+  nextObservationDueMs: NOW_MS - 10 * MIN,
+  toleratedByTimeAtMs: NOW_MS + 200 * MIN,
+  eyesOpenedAtMs: null,
+  isTolerated: false,
+  restartFraction: 0.5,
+  restartsIfNotTolerated: [{ drug: 'propofol', unit: 'mg/h', rateBefore: 30, rate: 15 }],
 })
 
 function open(dto: HoldFormDto) {
@@ -43,14 +68,18 @@ test('a safety item that is not answered keeps the hold from starting', async ()
   const { sent } = open(formDto())
   await userEvent.click(screen.getByRole('radio', { name: 'Continuous sedation is running' }))
   await userEvent.click(screen.getByRole('button', { name: 'Start the hold' }))
-  expect((await screen.findAllByText(/what is not assessed does not count as absent/)).length).toBeGreaterThanOrEqual(safety().length)
+  expect((await screen.findAllByText(/what is not assessed does not count as absent/)).length).toBeGreaterThanOrEqual(
+    safety().length,
+  )
   expect(sent).toEqual([])
 })
 
 test('an item that is present makes the hold unsafe, and the button says so before it is pressed', async () => {
   const { sent } = open(formDto())
   await userEvent.click(screen.getByRole('radio', { name: 'Continuous sedation is running' }))
-  await userEvent.click(within(screen.getByRole('radiogroup', { name: 'Raised intracranial pressure' })).getByRole('radio', { name: 'yes' }))
+  await userEvent.click(
+    within(screen.getByRole('radiogroup', { name: 'Raised intracranial pressure' })).getByRole('radio', { name: 'yes' }),
+  )
   expect(screen.getByText('Unsafe: raised intracranial pressure')).toBeTruthy()
   await userEvent.click(screen.getByRole('button', { name: 'Record: hold unsafe today' }))
   await waitFor(() => expect(sent).toHaveLength(1))
@@ -58,7 +87,14 @@ test('an item that is present makes the hold unsafe, and the button says so befo
 })
 
 test('the last hold gives its drugs but never its rates', async () => {
-  const { sent } = open(formDto({ lastInfusions: { observedAt: NOW_MS - 1440 * MIN, infusions: [{ drug: 'propofol', rate: 30, unit: 'mg/h', purpose: 'sedation' }] } }))
+  const { sent } = open(
+    formDto({
+      lastInfusions: {
+        observedAt: NOW_MS - 1440 * MIN,
+        infusions: [{ drug: 'propofol', rate: 30, unit: 'mg/h', purpose: 'sedation' }],
+      },
+    }),
+  )
   await userEvent.click(screen.getByRole('radio', { name: 'Continuous sedation is running' }))
   await answerAll('no')
   await userEvent.click(screen.getByRole('button', { name: /Fill in the drugs of the last hold/ }))
@@ -70,7 +106,10 @@ test('the last hold gives its drugs but never its rates', async () => {
   await userEvent.type(screen.getByRole('textbox', { name: 'Rate' }), '25')
   await userEvent.click(screen.getByRole('button', { name: 'Start the hold' }))
   await waitFor(() => expect(sent).toHaveLength(1))
-  expect(sent[0]?.body).toMatchObject({ start: 'started', infusions: [{ drug: 'propofol', rate: 25, unit: 'mg/h', purpose: 'sedation' }] })
+  expect(sent[0]?.body).toMatchObject({
+    start: 'started',
+    infusions: [{ drug: 'propofol', rate: 25, unit: 'mg/h', purpose: 'sedation' }],
+  })
 })
 
 test('a running hold counts from the server’s time and says how late the next look is', () => {

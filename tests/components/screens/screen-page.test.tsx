@@ -13,7 +13,13 @@ vi.mock('next/navigation', () => ({ useRouter: () => ({ push }) }))
 
 beforeEach(() => push.mockReset())
 
-const formDto = (change: Partial<ScreenFormDto> = {}): ScreenFormDto => ({ ...stepForm(), screens: [], amending: null, may: { record: true, amend: true }, ...change })
+const formDto = (change: Partial<ScreenFormDto> = {}): ScreenFormDto => ({
+  ...stepForm(),
+  screens: [],
+  amending: null,
+  may: { record: true, amend: true },
+  ...change,
+})
 const line = (name: string) => within(screen.getByRole('group', { name }))
 const verdict = () => screen.getByRole('status', { name: 'Verdict as typed so far' })
 const choose = (name: string, answer: string) => userEvent.click(line(name).getByRole('radio', { name: answer }))
@@ -70,7 +76,12 @@ test('recording asks once about values that are not confirmed, and sends them as
   await waitFor(() => expect(document.activeElement).toBe(confirm))
   await userEvent.click(screen.getByRole('button', { name: 'Record them as not assessed' }))
   await waitFor(() => expect(sent).toHaveLength(1))
-  expect(sent[0]?.body.readings).toEqual({ ...NO_SCREEN_READINGS, norepinephrineMcgPerKgMin: 0.04, otherVasopressor: false, ischaemia: false })
+  expect(sent[0]?.body.readings).toEqual({
+    ...NO_SCREEN_READINGS,
+    norepinephrineMcgPerKgMin: 0.04,
+    otherVasopressor: false,
+    ischaemia: false,
+  })
 })
 
 test('sends what was confirmed and typed, and goes to the patient', async () => {
@@ -83,8 +94,18 @@ test('sends what was confirmed and typed, and goes to the patient', async () => 
   expect(sent[0]).toMatchObject({
     path: '/api/episodes/e1/screens',
     body: {
-      episodeId: 'e1', observed: { day: '2026-12-01', time: '07:36' }, excuse: null, seenLatestId: null,
-      readings: { fio2Fraction: 0.4, peepCmH2O: 5, norepinephrineMcgPerKgMin: 0.04, otherVasopressor: false, ischaemia: false, breathsPerMin: null },
+      episodeId: 'e1',
+      observed: { day: '2026-12-01', time: '07:36' },
+      excuse: null,
+      seenLatestId: null,
+      readings: {
+        fio2Fraction: 0.4,
+        peepCmH2O: 5,
+        norepinephrineMcgPerKgMin: 0.04,
+        otherVasopressor: false,
+        ischaemia: false,
+        breathsPerMin: null,
+      },
     },
   })
 })
@@ -141,7 +162,13 @@ test('an excuse needs its reason, and goes without readings', async () => {
 
 test('when a colleague recorded meanwhile, the choice is given, and recording both says so', async () => {
   const { sent, answers } = open()
-  answers.push(refusal(409, { code: 'CONFLICT', message: 'Invented Colleague recorded a screen in the meantime, at 07:36: ready.', requestId: 'r' }))
+  answers.push(
+    refusal(409, {
+      code: 'CONFLICT',
+      message: 'Invented Colleague recorded a screen in the meantime, at 07:36: ready.',
+      requestId: 'r',
+    }),
+  )
   await userEvent.click(screen.getByRole('button', { name: /Confirm all/ }))
   await fillRest()
   await record()
@@ -156,7 +183,14 @@ test('when a colleague recorded meanwhile, the choice is given, and recording bo
 
 test('completing an incomplete screen takes its readings over, to be confirmed', () => {
   const readings = { ...NO_SCREEN_READINGS, fio2Fraction: 0.45, peepCmH2O: 6, otherVasopressor: false, ischaemia: false }
-  const left: ScreenDto = { ...entry('s1', 20), result: 'incomplete', excuse: null, note: null, readings, verdict: judgeScreen(stepForm().protocol.content.screen, readings, true) }
+  const left: ScreenDto = {
+    ...entry('s1', 20),
+    result: 'incomplete',
+    excuse: null,
+    note: null,
+    readings,
+    verdict: judgeScreen(stepForm().protocol.content.screen, readings, true),
+  }
   open(formDto({ screens: [left], seenLatestId: 's1' }))
   expect(valueOf(line('FiO2').getByRole('textbox'))).toBe('0.45')
   expect(isChecked(line('Other vasopressor').getByRole('radio', { name: 'no' }))).toBe(true)
@@ -189,7 +223,10 @@ test('says when a colleague records a screen while the form is open, and keeps w
   serve(() => live)
   show(<ScreenPage initial={live} amend={null} />)
   await userEvent.type(line('Norepinephrine').getByRole('textbox'), '0.04')
-  live = formDto({ screens: [{ ...entry('s2', 0), result: 'ready', excuse: null, note: null, readings: null, verdict: null }], seenLatestId: 's2' })
+  live = formDto({
+    screens: [{ ...entry('s2', 0), result: 'ready', excuse: null, note: null, readings: null, verdict: null }],
+    seenLatestId: 's2',
+  })
   expect(await screen.findByText('Another screen was just recorded', {}, { timeout: 6_000 })).toBeTruthy()
   expect(valueOf(line('Norepinephrine').getByRole('textbox'))).toBe('0.04')
 })

@@ -11,14 +11,36 @@ import { serve, show } from '../step-server'
 vi.mock('next/navigation', () => ({ useRouter: () => ({ push: vi.fn() }) }))
 
 const formDto = (change: Partial<TrialFormDto> = {}): TrialFormDto => ({
-  ...stepForm(), readiness: { isInOrder: true, missing: [], screen: null, hold: null, pairingWindowClosesMs: null }, trials: [], running: null, amending: null,
-  may: { start: true, observe: true, end: true }, ...change,
+  ...stepForm(),
+  readiness: { isInOrder: true, missing: [], screen: null, hold: null, pairingWindowClosesMs: null },
+  trials: [],
+  running: null,
+  amending: null,
+  may: { start: true, observe: true, end: true },
+  ...change,
 })
-const observation = (id: string, minute: number, breathsPerMin: number | null): TrialObservationDto => ({ ...entry(id, 20 - minute), readings: look({ breathsPerMin, spo2Percent: 92 }), minute, rsbi: null })
+const observation = (id: string, minute: number, breathsPerMin: number | null): TrialObservationDto => ({
+  ...entry(id, 20 - minute),
+  readings: look({ breathsPerMin, spo2Percent: 92 }),
+  minute,
+  rsbi: null,
+})
 const running = (change: Partial<RunningTrialDto> = {}): RunningTrialDto => ({
-  ...entry('t1', 20), technique: 'pressure_support', pressureSupportCmH2O: 7, peepCmH2O: 5, fio2Fraction: 0.4, plannedDurationMin: 30,
-  baseline: look({ breathsPerMin: 21, spo2Percent: 97, heartRatePerMin: 96 }), baselineRsbi: null, startedAnywayBecause: null, observations: [], end: null, rules: [],
-  plannedEndMs: NOW_MS + 10 * MIN, nextObservation: { minute: 15, dueMs: NOW_MS - 5 * MIN }, ...change,
+  ...entry('t1', 20),
+  technique: 'pressure_support',
+  pressureSupportCmH2O: 7,
+  peepCmH2O: 5,
+  fio2Fraction: 0.4,
+  plannedDurationMin: 30,
+  baseline: look({ breathsPerMin: 21, spo2Percent: 97, heartRatePerMin: 96 }),
+  baselineRsbi: null,
+  startedAnywayBecause: null,
+  observations: [],
+  end: null,
+  rules: [],
+  plannedEndMs: NOW_MS + 10 * MIN,
+  nextObservation: { minute: 15, dueMs: NOW_MS - 5 * MIN },
+  ...change,
 })
 
 function open(dto: TrialFormDto) {
@@ -29,7 +51,8 @@ function open(dto: TrialFormDto) {
 
 test('no technique is chosen beforehand, and old measurements are no baseline', () => {
   open(formDto())
-  for (const radio of within(screen.getByRole('radiogroup', { name: 'Technique' })).getAllByRole('radio')) expect(isChecked(radio)).toBe(false)
+  for (const radio of within(screen.getByRole('radiogroup', { name: 'Technique' })).getAllByRole('radio'))
+    expect(isChecked(radio)).toBe(false)
   expect(valueOf(screen.getByRole('textbox', { name: 'Respiratory rate' }))).toBe('')
   expect(valueOf(screen.getByRole('textbox', { name: 'FiO2' }))).toBe('0.4')
 })
@@ -48,12 +71,26 @@ test('a value carried over has to be confirmed before the trial starts', async (
   await waitFor(() => expect(sent).toHaveLength(1))
   expect(sent[0]).toMatchObject({
     path: '/api/episodes/e1/trials',
-    body: { technique: 't_piece', fio2Fraction: 0.4, peepCmH2O: null, pressureSupportCmH2O: null, plannedDurationMin: 30, startedAnywayBecause: null, baseline: { breathsPerMin: 20, tidalVolumeMl: null } },
+    body: {
+      technique: 't_piece',
+      fio2Fraction: 0.4,
+      peepCmH2O: null,
+      pressureSupportCmH2O: null,
+      plannedDurationMin: 30,
+      startedAnywayBecause: null,
+      baseline: { breathsPerMin: 20, tidalVolumeMl: null },
+    },
   })
 })
 
 test('when the day does not lead to a trial, what is missing is named and a reason asked for', () => {
-  const readiness = { isInOrder: false, missing: ['no screen is recorded today'], screen: null, hold: null, pairingWindowClosesMs: null }
+  const readiness = {
+    isInOrder: false,
+    missing: ['no screen is recorded today'],
+    screen: null,
+    hold: null,
+    pairingWindowClosesMs: null,
+  }
   open(formDto({ readiness }))
   expect(screen.getByText('no screen is recorded today')).toBeTruthy()
   expect(screen.getByRole('textbox', { name: 'Why the trial starts all the same' })).toBeTruthy()
@@ -68,7 +105,17 @@ test('a running trial shows its clock, how late the next look is, and the last v
 })
 
 test('a stop rule that is met is said at once, and leaves the decision at the bedside', () => {
-  const met = { id: 'r1', words: 'respiratory rate above 35 /min for 5 min', source: 'a source', state: 'met' as const, sinceMs: NOW_MS - 6 * MIN, metAtMs: NOW_MS, reachedAtMs: null, isBeyondNow: true, lastValue: 37 }
+  const met = {
+    id: 'r1',
+    words: 'respiratory rate above 35 /min for 5 min',
+    source: 'a source',
+    state: 'met' as const,
+    sinceMs: NOW_MS - 6 * MIN,
+    metAtMs: NOW_MS,
+    reachedAtMs: null,
+    isBeyondNow: true,
+    lastValue: 37,
+  }
   open(formDto({ running: running({ rules: [met] }) }))
   const alert = screen.getAllByRole('alert').find((each) => each.textContent?.includes('A stop rule is met'))
   expect(alert?.textContent).toContain('respiratory rate above 35 /min for 5 min. The clinician at the bedside decides.')
@@ -95,5 +142,8 @@ test('a pass before the planned end says that it needs a reason; a failure asks 
 })
 
 test('the chart leaves out looks without a rate and starts from the baseline', () => {
-  expect(ratePoints(running({ observations: [observation('a', 5, null), observation('b', 10, 30)] }))).toEqual([{ minute: 0, rate: 21 }, { minute: 10, rate: 30 }])
+  expect(ratePoints(running({ observations: [observation('a', 5, null), observation('b', 10, 30)] }))).toEqual([
+    { minute: 0, rate: 21 },
+    { minute: 10, rate: 30 },
+  ])
 })

@@ -96,7 +96,7 @@ export const CLINICAL_FORMS: FormCase[] = [
     empty: 'Give at least one reading',
     wrong: [FIO2_PERCENT, { label: 'Tidal volume, spontaneous', typed: '0.41', words: /410 mL\?/ }],
     fillRight: async (form) => {
-      await fill(form, { FiO2: '0.60', PEEP: '6', 'Norepinephrine dose, 0 when none runs': '0', 'Tidal volume, spontaneous': '' })
+      await fill(form, { FiO2: '0.60', PEEP: '5', 'Norepinephrine dose, 0 when none runs': '0', 'Tidal volume, spontaneous': '' })
       await choose(form, 'Other vasopressor', 'no')
       await choose(form, 'Active ischaemia in 24 h', 'no')
     },

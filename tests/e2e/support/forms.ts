@@ -39,3 +39,7 @@ export async function expectMarked(control: Locator, words: string | RegExp): Pr
   await expect(control).toHaveAttribute('aria-invalid', 'true')
   await expect(control).toHaveAccessibleDescription(words)
 }
+
+/** The next move of a bed on Today, for those who may take it. */
+export const moveLink = (page: Page, title: string, bed: string) =>
+  page.getByRole('link', { name: new RegExp(`^${title} ?, bed ${bed}$`) })

@@ -114,7 +114,9 @@ export const test = base.extend<Fixtures, WorkerFixtures>({
     for (const context of opened) await context.close()
   },
   openAs: async ({ openBrowser, storageOf }, provide) =>
-    provide(async (who, options = {}) => openBrowser({ baseURL: baseUrlOf('ward'), storageState: await storageOf(who), ...options })),
+    provide(async (who, options = {}) =>
+      openBrowser({ baseURL: baseUrlOf('ward'), storageState: await storageOf(who), ...options }),
+    ),
   rows: async ({}, provide) => {
     const db = new Database(join(testFolder('ward'), 'daybreath.db'), { readonly: true })
     await provide(<Row>(sql: string, ...values: unknown[]) => db.prepare(sql).all(...values) as Row[])

@@ -16,14 +16,19 @@ import { startSmtpServer } from '@/tests/helpers/smtp'
 
 const FROM = 'Daybreath <daybreath@hospital.invalid>'
 const message = windowEndMessage({
-  unitName: 'Medical ICU', dayText: '3 Mar 2026', closedText: '09:00', beds: [{ bedLabel: 'M01', what: 'screen' }], url: 'http://localhost:3000/units/u1/today',
+  unitName: 'Medical ICU',
+  dayText: '3 Mar 2026',
+  closedText: '09:00',
+  beds: [{ bedLabel: 'M01', what: 'screen' }],
+  url: 'http://localhost:3000/units/u1/today',
 })
 
 function queue(db: Db, unitId: string, recipient = 'rt@example.invalid', day = '2026-03-03'): boolean {
   return queueMessage(db, { kind: 'window_end', unitId, day, occasion: day, personId: null, recipient, now: NOW }, message)
 }
 const rows = (db: Db) => db.select().from(mailLedger).all()
-const run = (db: Db, transport: MailTransport, now = NOW) => deliverMail(makeJobCtx(db, 'mail.deliver', now), transport, FROM, () => now)
+const run = (db: Db, transport: MailTransport, now = NOW) =>
+  deliverMail(makeJobCtx(db, 'mail.deliver', now), transport, FROM, () => now)
 
 function smtp(url: string): MailTransport {
   const transport = smtpTransport(url)
@@ -64,7 +69,12 @@ describe('delivery over real SMTP', () => {
     queue(db, medical.unit.id)
     server.behave({ refuse: 451 })
     await run(db, transport)
-    expect(rows(db)[0]).toMatchObject({ state: 'queued', attempts: 1, nextAttemptAt: NOW + MINUTE_MS, lastError: 'The mail server answered 451.' })
+    expect(rows(db)[0]).toMatchObject({
+      state: 'queued',
+      attempts: 1,
+      nextAttemptAt: NOW + MINUTE_MS,
+      lastError: 'The mail server answered 451.',
+    })
     expect(await run(db, transport, NOW + MINUTE_MS - 1)).toEqual({ sent: 0, kept: 0, failed: 0 })
     await run(db, transport, NOW + MINUTE_MS)
     expect(rows(db)[0]).toMatchObject({ state: 'queued', attempts: 2, nextAttemptAt: NOW + 6 * MINUTE_MS })
@@ -122,11 +132,16 @@ describe('delivery over real SMTP', () => {
     const first = openTestDatabaseFile(file)
     const { medical } = makeWorld(first)
     const second = openTestDatabaseFile(file)
-    onTestFinished(() => { first.$client.close(); second.$client.close() })
+    onTestFinished(() => {
+      first.$client.close()
+      second.$client.close()
+    })
     const server = await startSmtpServer()
     for (let index = 0; index < 20; index += 1) queue(first, medical.unit.id, `rt${index}@example.invalid`)
     await Promise.all([run(first, smtp(server.url)), run(second, smtp(server.url))])
-    expect(server.received.map(({ to }) => to[0]).sort()).toEqual(Array.from({ length: 20 }, (_, index) => `rt${index}@example.invalid`).sort())
+    expect(server.received.map(({ to }) => to[0]).sort()).toEqual(
+      Array.from({ length: 20 }, (_, index) => `rt${index}@example.invalid`).sort(),
+    )
   })
 
   it('refuses a person', async () => {

@@ -13,8 +13,26 @@ function makeMailWorld() {
   const world = makeWorld()
   const unitId = world.medical.unit.id
   world.db.insert(mailSchedules).values({ unitId, morningDueMin: 300 }).run()
-  const message = windowEndMessage({ unitName: 'Medical ICU', dayText: '3 Mar 2026', closedText: '09:00', beds: [], url: 'http://localhost/x' })
-  queueMessage(world.db, { kind: 'window_end', unitId, day: '2026-03-02', occasion: '2026-03-02', personId: world.rt.id, recipient: 'rt@example.invalid', now: NOW }, message)
+  const message = windowEndMessage({
+    unitName: 'Medical ICU',
+    dayText: '3 Mar 2026',
+    closedText: '09:00',
+    beds: [],
+    url: 'http://localhost/x',
+  })
+  queueMessage(
+    world.db,
+    {
+      kind: 'window_end',
+      unitId,
+      day: '2026-03-02',
+      occasion: '2026-03-02',
+      personId: world.rt.id,
+      recipient: 'rt@example.invalid',
+      now: NOW,
+    },
+    message,
+  )
   return { ...world, unitId }
 }
 const input = (unitId: string) => ({ unitId, version: 1, morningTime: '04:30', isWindowEndOn: false, isDecisionOwedOn: true })
@@ -25,7 +43,11 @@ describe('reading the Mail page', () => {
   it('shows a clinician what went and what goes next, without addresses', () => {
     const { db, nurse, unitId } = makeMailWorld()
     const page = readMail(makeCtx(db, nurse), { unitId })
-    expect(page).toMatchObject({ isKeptAsFiles: true, maySchedule: false, entries: [{ state: 'queued', personName: 'Robin Therapist', recipient: null }] })
+    expect(page).toMatchObject({
+      isKeptAsFiles: true,
+      maySchedule: false,
+      entries: [{ state: 'queued', personName: 'Robin Therapist', recipient: null }],
+    })
     // It is 08:00: today's morning list has passed, the window closes at nine.
     expect(page.upcoming).toEqual([
       { kind: 'window_end', atMs: wallClockMs('2026-03-03', 540, TIME_ZONE), toRoles: ['rt', 'unit_lead'], recipients: 2 },
@@ -57,13 +79,21 @@ describe('setting the schedule', () => {
   it('is saved by the unit lead, with an audit row', () => {
     const { db, lead, unitId } = makeMailWorld()
     expect(saveMailSchedule(makeCtx(db, lead), input(unitId))).toEqual({ version: 2 })
-    expect(db.select().from(mailSchedules).get()).toMatchObject({ morningDueMin: 270, isWindowEndOn: false, isDecisionOwedOn: true, version: 2 })
-    expect(auditRows(db, 'mail.schedule')).toMatchObject([{ unitId, actorId: lead.id, before: { morningDueMin: 300 }, after: { morningDueMin: 270 } }])
+    expect(db.select().from(mailSchedules).get()).toMatchObject({
+      morningDueMin: 270,
+      isWindowEndOn: false,
+      isDecisionOwedOn: true,
+      version: 2,
+    })
+    expect(auditRows(db, 'mail.schedule')).toMatchObject([
+      { unitId, actorId: lead.id, before: { morningDueMin: 300 }, after: { morningDueMin: 270 } },
+    ])
   })
 
   it('is refused to the others, and the refusal is logged', () => {
     const { db, rt, nurse, physician, outsider, unitId } = makeMailWorld()
-    for (const person of [rt, nurse, physician]) expect(() => saveMailSchedule(makeCtx(db, person), input(unitId))).toThrow(forbidden)
+    for (const person of [rt, nurse, physician])
+      expect(() => saveMailSchedule(makeCtx(db, person), input(unitId))).toThrow(forbidden)
     expect(() => saveMailSchedule(makeCtx(db, outsider), input(unitId))).toThrow(notFound)
     expect(auditRows(db, 'access.denied')).toHaveLength(4)
     expect(db.select().from(mailSchedules).get()?.version).toBe(1)
@@ -72,7 +102,10 @@ describe('setting the schedule', () => {
   it('refuses a stale version, and a morning list after the window closed', () => {
     const { db, lead, unitId } = makeMailWorld()
     expect(() => saveMailSchedule(makeCtx(db, lead), { ...input(unitId), morningTime: '09:00' })).toThrow(
-      expect.objectContaining({ code: 'INVALID', fields: { morningTime: 'The screening window closes at 09:00. Give an earlier time.' } }),
+      expect.objectContaining({
+        code: 'INVALID',
+        fields: { morningTime: 'The screening window closes at 09:00. Give an earlier time.' },
+      }),
     )
     saveMailSchedule(makeCtx(db, lead), input(unitId))
     expect(() => saveMailSchedule(makeCtx(db, lead), input(unitId))).toThrow(expect.objectContaining({ code: 'CONFLICT' }))
@@ -88,7 +121,14 @@ describe('setting the schedule', () => {
 
   it('takes only a time of the 24-hour clock', () => {
     const parse = (morningTime: unknown) => saveMailScheduleSchema.safeParse({ ...input('u'), morningTime }).success
-    expect([parse('05:00'), parse(null), parse('5'), parse('24:00'), parse('05:60'), parse(300)]).toEqual([true, true, false, false, false, false])
+    expect([parse('05:00'), parse(null), parse('5'), parse('24:00'), parse('05:60'), parse(300)]).toEqual([
+      true,
+      true,
+      false,
+      false,
+      false,
+      false,
+    ])
   })
 })
 

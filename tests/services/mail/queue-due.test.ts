@@ -24,7 +24,9 @@ describe('the morning list', () => {
     const { db, rt } = makeMailWorld()
     expect(queueAt(db, at(TODAY, 5) - MINUTE_MS)).toBe(0)
     expect(queueAt(db, at(TODAY, 5))).toBe(1)
-    expect(rows(db)).toMatchObject([{ kind: 'morning_due', day: TODAY, personId: rt.id, state: 'queued', subject: 'Medical ICU: 1 screen due, 3 Mar 2026' }])
+    expect(rows(db)).toMatchObject([
+      { kind: 'morning_due', day: TODAY, personId: rt.id, state: 'queued', subject: 'Medical ICU: 1 screen due, 3 Mar 2026' },
+    ])
     expect(queueAt(db, at(TODAY, 5, 1))).toBe(0)
   })
 
@@ -62,7 +64,9 @@ describe('the morning list', () => {
     expect(queueAt(db, at(TODAY, 5))).toBe(0)
     db.update(people).set({ deactivatedAt: null }).run()
     db.delete(memberships).run()
-    db.insert(memberships).values({ id: 'm1', personId: gone.id, unitId: medical.unit.id, role: 'rt', startedAt: 0, endedAt: NOW }).run()
+    db.insert(memberships)
+      .values({ id: 'm1', personId: gone.id, unitId: medical.unit.id, role: 'rt', startedAt: 0, endedAt: NOW })
+      .run()
     db.insert(memberships).values({ id: 'm2', personId: rt.id, unitId: medical.unit.id, role: 'rt', startedAt: 0 }).run()
     expect(queueAt(db, at(TODAY, 5))).toBe(1)
     makePerson(db, hospital.id, [{ unitId: medical.unit.id, role: 'rt' }])
@@ -82,7 +86,12 @@ describe('the reminder at the end of the window', () => {
     const { db, rt, lead } = makeMailWorld()
     queueAt(db, at(TODAY, 5))
     expect(queueAt(db, at(TODAY, 9))).toBe(2)
-    expect(rows(db).filter(({ kind }) => kind === 'window_end').map(({ personId }) => personId).sort()).toEqual([rt.id, lead.id].sort())
+    expect(
+      rows(db)
+        .filter(({ kind }) => kind === 'window_end')
+        .map(({ personId }) => personId)
+        .sort(),
+    ).toEqual([rt.id, lead.id].sort())
     expect(queueAt(db, at(TODAY, 9, 1))).toBe(0)
   })
 
@@ -116,7 +125,9 @@ describe('a simulated stretch of days with restarts', () => {
     // Half past two does not exist on the first of these days and comes twice on the other.
     db.update(mailSchedules).set({ morningDueMin: 150 }).run()
     const start = wallClockMs(firstDay, 0, TIME_ZONE)
-    db.update(stays).set({ startedAt: start - 48 * HOUR_MS }).run()
+    db.update(stays)
+      .set({ startedAt: start - 48 * HOUR_MS })
+      .run()
     db.$client.prepare('update episodes set started_at = ? where id = ?').run(start - 47 * HOUR_MS, episode.id)
     for (let minute = 0; minute < days * 24 * 60; minute += 5) {
       // The server is away for a while again and again.
@@ -132,7 +143,9 @@ describe('a simulated stretch of days with restarts', () => {
 describe('what a message holds', () => {
   it('names no patient, record number or birth date in any part or header, and its link leads to the unit', async () => {
     const { db, episode, place, medical } = makeMailWorld()
-    db.update(patients).set({ familyName: 'Zyxwvut', givenName: 'Qponml', recordNumber: 'RN-998877', birthDate: '1951-02-03' }).run()
+    db.update(patients)
+      .set({ familyName: 'Zyxwvut', givenName: 'Qponml', recordNumber: 'RN-998877', birthDate: '1951-02-03' })
+      .run()
     queueAt(db, at(TODAY, 5))
     queueAt(db, at(TODAY, 9))
     addScreen(db, episode, place, { result: 'ready', observedAt: at(TODAY, 9, 10) })
@@ -141,10 +154,12 @@ describe('what a message holds', () => {
     const server = await startSmtpServer()
     const transport = smtpTransport(server.url)
     onTestFinished(() => transport.close())
-    await deliverMail(makeJobCtx(db, 'mail.deliver', at(TODAY, 11)), transport, 'Daybreath <daybreath@hospital.invalid>', () => at(TODAY, 11))
-    expect(new Set(server.received.map(({ mail }) => mail.subject?.split(':')[1]?.trim().split(' ').slice(0, 2).join(' ')))).toEqual(
-      new Set(['1 screen', '1 patient', 'decision owed,']),
+    await deliverMail(makeJobCtx(db, 'mail.deliver', at(TODAY, 11)), transport, 'Daybreath <daybreath@hospital.invalid>', () =>
+      at(TODAY, 11),
     )
+    expect(
+      new Set(server.received.map(({ mail }) => mail.subject?.split(':')[1]?.trim().split(' ').slice(0, 2).join(' '))),
+    ).toEqual(new Set(['1 screen', '1 patient', 'decision owed,']))
     for (const { raw, mail } of server.received) {
       const everything = [raw, mail.text, mail.html, JSON.stringify([...mail.headers])].join('\n')
       for (const secret of ['Zyxwvut', 'Qponml', 'RN-998877', '1951', episode.id]) expect(everything).not.toContain(secret)
@@ -157,6 +172,18 @@ describe('what a message holds', () => {
 
 it('refuses a person', () => {
   const { db, lead } = makeMailWorld()
-  expect(() => queueDueMail({ ...makeJobCtx(db, 'x'), actor: { kind: 'person', personId: lead.id, sessionId: 's', hospitalId: lead.hospitalId, name: 'x', isAdministrator: false, memberships: [] } }))
-    .toThrow(expect.objectContaining({ code: 'FORBIDDEN' }))
+  expect(() =>
+    queueDueMail({
+      ...makeJobCtx(db, 'x'),
+      actor: {
+        kind: 'person',
+        personId: lead.id,
+        sessionId: 's',
+        hospitalId: lead.hospitalId,
+        name: 'x',
+        isAdministrator: false,
+        memberships: [],
+      },
+    }),
+  ).toThrow(expect.objectContaining({ code: 'FORBIDDEN' }))
 })

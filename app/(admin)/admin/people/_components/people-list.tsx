@@ -85,7 +85,7 @@ function columns(onChange: (person: PersonDto) => void): Column<PersonDto>[] {
 function NameCell({ person, onChange }: { person: PersonDto; onChange: () => void }) {
   return (
     <>
-      <Button variant="quiet" className="-mt-2.5 px-0 text-left" aria-label={`Change ${person.name}`} onClick={onChange}>
+      <Button variant="quiet" className="-mt-2.5 -ml-3 text-left" aria-label={`Change ${person.name}`} onClick={onChange}>
         {person.name}
       </Button>
       <span className="block font-normal break-all text-muted">{person.email}</span>

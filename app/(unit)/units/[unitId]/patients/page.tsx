@@ -10,5 +10,10 @@ export const metadata: Metadata = { title: 'Patients' }
 export default async function Page({ params }: PageProps<'/units/[unitId]/patients'>) {
   const { unitId } = await params
   const ctx = await pageCtx()
-  return <UnitPatients initial={readForPage(() => listPatients(ctx, { unitId }))} mayBegin={mayInUnit(ctx.actor.memberships, 'episode.begin', unitId)} />
+  return (
+    <UnitPatients
+      initial={readForPage(() => listPatients(ctx, { unitId }))}
+      mayBegin={mayInUnit(ctx.actor.memberships, 'episode.begin', unitId)}
+    />
+  )
 }

@@ -15,7 +15,10 @@ export default async function Page({ params }: PageProps<'/units/[unitId]/protoc
   if (!page.may.draft) notFound()
   return (
     <>
-      <PageHeading title={page.draft ? `Draft of version ${page.draft.number}` : 'Draft a new version'} below={`${page.unit.name}. Limits outside what a protocol may hold are refused at their field.`} />
+      <PageHeading
+        title={page.draft ? `Draft of version ${page.draft.number}` : 'Draft a new version'}
+        below={`${page.unit.name}. Limits outside what a protocol may hold are refused at their field.`}
+      />
       <DraftForm page={page} />
     </>
   )
