@@ -25,7 +25,7 @@ export function useDecisionForm(dto: DecisionFormDto) {
     }
     return parse(own, context, options)
   }
-  return useForm({ resolver, defaultValues: startFrom(dto) })
+  return useForm({ shouldFocusError: false, resolver, defaultValues: startFrom(dto) })
 }
 
 function startFrom(dto: DecisionFormDto): DecisionInput {

@@ -73,12 +73,17 @@ export function useSubmit<Values extends FieldValues, Context, Output, Answer = 
     if (isBusy.current) return
     isBusy.current = true
     const element = event.currentTarget
+    let isRefused = false
     const sent = form.handleSubmit(
       (values) => send(values, element),
-      () => focusFirstInvalid(element),
+      () => {
+        isRefused = true
+      },
     )(event)
+    // The messages are drawn only after the form has been judged, and its own choice of focus follows the order of mounting, not of the page.
     void sent.finally(() => {
       isBusy.current = false
+      if (isRefused) focusFirstInvalid(element)
     })
   }
 

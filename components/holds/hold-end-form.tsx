@@ -43,6 +43,7 @@ export function HoldEndForm({ dto, holdId, hold, outcome, amending, nowMs, onBac
   const router = useRouter()
   const { episodeId, patientId, timeZone } = dto.patient
   const form = useForm({
+    shouldFocusError: false,
     resolver: zodResolver(endHoldSchema),
     defaultValues: {
       episodeId,

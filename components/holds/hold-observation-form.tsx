@@ -33,6 +33,7 @@ export function HoldObservationForm({ dto, holdId, amending, nowMs }: Props) {
   const router = useRouter()
   const { episodeId, patientId, timeZone } = dto.patient
   const form = useForm({
+    shouldFocusError: false,
     resolver: zodResolver(observeHoldSchema),
     defaultValues: {
       episodeId,

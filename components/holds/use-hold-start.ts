@@ -34,7 +34,7 @@ export function useHoldStart(dto: HoldFormDto) {
     const start = typed.start === 'started' && result === 'unsafe' ? 'unsafe' : typed.start
     return parse({ ...typed, start, safety: safety as HoldStartInput['safety'] }, context, options)
   }
-  return useForm({ resolver, defaultValues: values })
+  return useForm({ shouldFocusError: false, resolver, defaultValues: values })
 }
 
 function unanswered(items: readonly HoldSafetyItem[], answers: Answers): FieldErrors<HoldStartInput> {

@@ -74,7 +74,9 @@ function MailEntry({ entry, data }: { entry: MailEntryDto; data: MailPageDto }) 
         <summary className="inline-flex min-h-[44px] cursor-pointer items-center underline underline-offset-4">
           Read the message: {entry.subject}
         </summary>
-        <pre className="whitespace-pre-wrap break-words border-l-4 border-line py-2 pl-4 font-sans">{entry.bodyText}</pre>
+        <pre className="border-l-4 border-line py-2 [overflow-wrap:anywhere] whitespace-pre-wrap pl-4 font-sans">
+          {entry.bodyText}
+        </pre>
       </details>
       {maySchedule && isTrouble(entry) ? <SendAgain unitId={unit.id} mailId={entry.id} subject={entry.subject} /> : null}
     </>

@@ -1,6 +1,7 @@
 'use client'
 
 import { useQuery } from '@tanstack/react-query'
+import { useState } from 'react'
 import { Notice } from '@/components/ui/notice'
 import { PageHeading } from '@/components/ui/page-heading'
 import { apiGet } from '@/lib/client/api'
@@ -32,7 +33,7 @@ export function MailPage({ initial }: { initial: MailPageDto }) {
         </Notice>
       ) : null}
       <div className="grid gap-10 desk:grid-cols-[minmax(0,2fr)_minmax(18rem,1fr)]">
-        <section aria-labelledby="mail-ledger">
+        <section aria-labelledby="mail-ledger" className="min-w-0">
           <h2 id="mail-ledger" className="mb-3 text-xl font-bold">
             What went
           </h2>

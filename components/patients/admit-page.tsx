@@ -27,6 +27,7 @@ export function AdmitPage({ list }: { list: Omit<PatientListDto, 'patients'> }) 
   const router = useRouter()
   const nowMs = useServerNow(list.nowMs)
   const form = useForm({
+    shouldFocusError: false,
     resolver: zodResolver(admitPatientSchema),
     defaultValues: {
       unitId: unit.id,

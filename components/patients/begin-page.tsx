@@ -75,6 +75,7 @@ function BeginForm({ patientId, timeZone, openedAtMs }: { patientId: string; tim
   const router = useRouter()
   const nowMs = useServerNow(openedAtMs)
   const form = useForm({
+    shouldFocusError: false,
     resolver: zodResolver(beginEpisodeSchema),
     defaultValues: {
       patientId,

@@ -33,7 +33,7 @@ export function CorrectPatientPage({ page }: { page: Pick<PatientPageDto, 'patie
     weightKg,
     confirmedUnlikely: unlikely,
   }
-  const form = useForm({ resolver: zodResolver(correctPatientSchema), defaultValues: values })
+  const form = useForm({ shouldFocusError: false, resolver: zodResolver(correctPatientSchema), defaultValues: values })
   const submit = useSubmit({
     form,
     path: `/api/patients/${patientId}`,

@@ -15,7 +15,11 @@ import { OPENING_HOURS, openRecordSchema, type OpenedRecordDto } from '@/lib/sch
 /** One patient's record outside the reader's own units, for a stated reason. */
 export function OpenRecordPage() {
   const router = useRouter()
-  const form = useForm({ resolver: zodResolver(openRecordSchema), defaultValues: { recordNumber: '', reason: '' } })
+  const form = useForm({
+    shouldFocusError: false,
+    resolver: zodResolver(openRecordSchema),
+    defaultValues: { recordNumber: '', reason: '' },
+  })
   const submit = useSubmit({
     form,
     path: '/api/openings',

@@ -62,7 +62,7 @@ function RuleFields({ form, index, rule, label }: RuleFieldsProps) {
   return (
     <div className="flex flex-wrap items-start gap-x-6 gap-y-3 pl-2">
       {limits.map((_, place) => (
-        <div key={place} className="flex gap-3">
+        <div key={place} className="flex min-w-0 flex-wrap gap-3">
           <SelectField
             control={control}
             name={`${path}.limits.${place}.comparator`}

@@ -39,7 +39,7 @@ export function DraftStopRules({ form, name, label }: { form: DraftForm; name: L
     setChosen('')
   }
   return (
-    <fieldset className="flex flex-col gap-3">
+    <fieldset className="flex min-w-0 flex-col gap-3">
       <legend className="font-semibold">{label}</legend>
       <ul className="border-t border-line">
         {rules.fields.map((rule, index) => (

@@ -35,7 +35,7 @@ type CriteriaListProps = {
 
 /** The criteria of the unit's protocol, a line each, and the RSBI, which is computed whether or not the unit asks for it. */
 export function CriteriaList(props: CriteriaListProps) {
-  const { rules, verdict, form, carried, confirm, timeZone, nowMs, counted } = props
+  const { rules, verdict, form, carried, confirm, timeZone, nowMs } = props
   const rsbiRule = rules.find((rule) => rule.criterion === 'rsbi')
   return (
     <div className="border-b-2 border-ink">

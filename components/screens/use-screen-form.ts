@@ -28,7 +28,7 @@ export function useScreenForm(dto: ScreenFormDto) {
     const readings = isExcusing ? null : confirmedReadings(values.readings ?? NO_READINGS, carried, 'keep unreadable')
     return parse({ ...values, excuse: isExcusing ? values.excuse : null, readings }, context, options)
   }
-  const form = useForm({ resolver, defaultValues: start.values })
+  const form = useForm({ shouldFocusError: false, resolver, defaultValues: start.values })
   const typed = useWatch({ control: form.control, name: 'readings' })
   const counted = useMemo(() => confirmedReadings(typed ?? NO_READINGS, carried), [typed, carried])
   const verdict = judgeScreen(dto.protocol.content.screen, counted, dto.patient.isAdult)

@@ -27,7 +27,7 @@ export function RateChart({ trial, rules, untilMs, isRunning }: RateChartProps) 
   const last = points.at(-1)
   return (
     <figure className="m-0">
-      <figcaption className="mb-2 font-semibold">Respiratory rate, /min</figcaption>
+      <figcaption className="mb-2 font-semibold">Respiratory rate, /min, by minute of the trial</figcaption>
       <div className="relative pl-9">
         {[0, 10, 20, 30, 40]
           .filter((tick) => tick <= highest)
@@ -94,11 +94,7 @@ export function RateChart({ trial, rules, untilMs, isRunning }: RateChartProps) 
         </svg>
         <div aria-hidden="true" className="relative h-6 text-sm text-muted">
           {minuteTicks(lastMin).map((tick) => (
-            <span
-              key={tick}
-              className="figure absolute top-1 -translate-x-1/2 whitespace-nowrap first:translate-x-0"
-              style={{ left: x(tick) }}
-            >
+            <span key={tick} className="figure absolute top-1 -translate-x-1/2 whitespace-nowrap" style={{ left: x(tick) }}>
               {tick}
               {tick === 0 ? ' min' : ''}
             </span>
@@ -114,7 +110,7 @@ function LimitLine({ rule, y }: { rule: Extract<StopRule, { kind: 'limit' }>; y:
   return (
     <>
       <line x1="0" x2="100%" y1={y} y2={y} className="stroke-stop" strokeWidth="1.5" strokeDasharray="6 4" />
-      <text x="6" y={isUpper ? y - 6 : y + 16} className="fill-muted text-xs">
+      <text x="100%" y={isUpper ? y - 6 : y + 16} textAnchor="end" className="fill-muted text-xs">
         {isUpper ? 'over' : 'under'} {rule.limit.value}
         {rule.sustainedMin > 0 ? ` for ${rule.sustainedMin} min` : ''}
       </text>
@@ -123,7 +119,7 @@ function LimitLine({ rule, y }: { rule: Extract<StopRule, { kind: 'limit' }>; y:
 }
 
 function minuteTicks(lastMin: number): number[] {
-  const step = lastMin > 70 ? 30 : 10
+  const step = lastMin > 70 ? 30 : lastMin > 35 ? 15 : 10
   return Array.from({ length: Math.floor(lastMin / step) + 1 }, (_, index) => index * step)
 }
 

@@ -17,7 +17,7 @@ type Props = { dto: TrialFormDto; trial: RunningTrialDto; nowMs: number }
 /** A running trial, to leave open: rate against its limits, last values against baseline, stop rules, the next observation, the end. */
 export function RunningTrial({ dto, trial, nowMs }: Props) {
   const [ending, setEnding] = useState<TrialOutcome | null>(null)
-  const { timeZone, episodeId, predictedBodyWeightKg } = dto.patient
+  const { timeZone, predictedBodyWeightKg } = dto.patient
   const rules = dto.protocol.content.trial.stopRules
   const met = trial.rules.filter(({ state }) => state === 'met')
   return (

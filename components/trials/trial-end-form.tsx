@@ -44,6 +44,7 @@ export function TrialEndForm({ dto, trialId, trial, outcome, amending, nowMs, on
   const router = useRouter()
   const { episodeId, patientId, timeZone } = dto.patient
   const form = useForm({
+    shouldFocusError: false,
     resolver: zodResolver(endTrialSchema),
     defaultValues: {
       episodeId,

@@ -26,6 +26,7 @@ export function TrialObservationForm({ dto, trialId, amending, nowMs }: Props) {
   const router = useRouter()
   const { episodeId, patientId, timeZone } = dto.patient
   const form = useForm({
+    shouldFocusError: false,
     resolver: zodResolver(observeTrialSchema),
     defaultValues: {
       episodeId,

@@ -30,7 +30,7 @@ export function useTrialStart(dto: TrialFormDto) {
     if (open.length > 0) return { values: {}, errors: unconfirmedErrors(open) }
     return parse(values, context, options)
   }
-  const form = useForm({ resolver, defaultValues: start.values })
+  const form = useForm({ shouldFocusError: false, resolver, defaultValues: start.values })
   const confirm = (names: readonly string[]) => {
     setCarried((now) => Object.fromEntries(Object.entries(now).filter(([name]) => !names.includes(name))) as CarriedTrial)
     form.clearErrors(names as CarriedField[])

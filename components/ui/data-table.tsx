@@ -23,7 +23,7 @@ type DataTableProps<Row> = {
 export function DataTable<Row>({ caption, isCaptionHidden, columns, rows, rowKey, empty }: DataTableProps<Row>) {
   if (rows.length === 0) return <div className="py-6 text-muted">{empty}</div>
   return (
-    <div role="region" aria-label={caption} tabIndex={0} className="overflow-x-auto">
+    <div role="region" aria-label={caption} tabIndex={0} className="relative overflow-x-auto">
       <table className="w-full border-collapse text-left">
         <caption className={cn('pb-2 text-left font-semibold', isCaptionHidden && 'sr-only')}>{caption}</caption>
         <thead>

@@ -4,7 +4,7 @@ import { choose, expectMarked, expectRefused, field, fill, form } from './suppor
 import { expectAccessible } from './support/look'
 import { linkOf, waitForMail } from './support/mailbox'
 import { baseUrlOf, morningZone, testFolder } from './support/places'
-import { expect, NOT_FOUND_404, REFUSED_403, test, UNAUTHENTICATED_401 } from './support/test'
+import { expect, NOT_FOUND_404, REFUSED_403, REFUSED_422, test } from './support/test'
 
 const baseURL = baseUrlOf('empty')
 const PASSWORD = 'harbour lights at dawn'
@@ -48,7 +48,7 @@ test('an administrator sets up hospital, units, beds, people and roles, and sees
   })
 
   await test.step('signing in: empty, wrong, right', async () => {
-    complaints.expect(UNAUTHENTICATED_401)
+    complaints.expect(REFUSED_422)
     const signIn = form(page, 'Sign in')
     await signIn.getByRole('button', { name: 'Sign in' }).click()
     await expectRefused(signIn, 'Write the e-mail address.')

@@ -20,12 +20,13 @@ test('the server is killed while settings are written: whatever was acknowledged
       storageState: await signIn(server.url, PEOPLE.rt.email, PASSWORD),
       extraHTTPHeaders: { origin: server.url },
     })
+    const observed = clockAgo(3, ward.zone)
     const acknowledged = new Map<string, string>()
     const write = async (key: string) => {
       const answer = await api.post(`/api/episodes/${ward.patients.lone.episodeId}/settings`, {
         headers: { 'idempotency-key': key },
         data: {
-          observed: clockAgo(3, ward.zone),
+          observed,
           mode: 'PC-CSV',
           fio2Fraction: 0.4,
           peepCmH2O: 6,

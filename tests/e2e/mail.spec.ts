@@ -1,7 +1,7 @@
 import { clockAgo, field, form, moveLink } from './support/forms'
 import { countMail, linkOf, waitForMail } from './support/mailbox'
 import { baseUrlOf, PASSWORD, PEOPLE } from './support/places'
-import { expect, test, UNAUTHENTICATED_401 } from './support/test'
+import { expect, REFUSED_422, test } from './support/test'
 
 const baseURL = baseUrlOf('ward')
 
@@ -28,7 +28,7 @@ test('a forgotten password is set anew through the link in the mail', async ({ o
   await reset.getByRole('button', { name: 'Set password' }).dblclick()
   await expect(page.getByText('Your new password is set. Sign in with it.')).toBeVisible()
 
-  complaints.expect(UNAUTHENTICATED_401)
+  complaints.expect(REFUSED_422)
   const signIn = form(page, 'Sign in')
   await field(signIn, 'E-mail address').fill(email)
   await signIn.getByLabel('Password', { exact: true }).fill(PASSWORD)

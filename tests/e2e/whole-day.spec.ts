@@ -93,7 +93,7 @@ test('four people carry one patient through the day, and each sees the others’
     await fill(start, { FiO2: '0.40', 'Respiratory rate': '20', 'Tidal volume': '400', SpO2: '96', 'Heart rate': '88' })
     await observedAgo(start, 'Trial starts at', 50, ward.zone)
     await start.getByRole('button', { name: 'Start the trial' }).click()
-    for (const page of [physician, lead]) await expect(rowOn(page)).toContainText('RT · observation 2 min', SOON)
+    for (const page of [physician, lead]) await expect(rowOn(page)).toContainText('RT · record outcome of trial', SOON)
 
     await physician.goto(`/episodes/${episodeId}/decision`)
     await nurse.goto(`/episodes/${episodeId}/trial`)

@@ -57,6 +57,7 @@ test('not today needs reasons, a time to look again and the password', async () 
     expect((await screen.findAllByText((text) => text.includes(words))).length).toBeGreaterThan(0)
   }
   expect(sent).toEqual([])
+  await waitFor(() => expect(document.activeElement).toBe(screen.getByRole('checkbox', { name: 'Mental state' })))
 })
 
 test('shows the sentence that is signed and sends it with the hash of the evidence on the page', async () => {

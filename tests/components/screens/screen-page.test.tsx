@@ -119,7 +119,7 @@ test('FiO2 typed as 50 is refused at its field with the likely value, counts for
   expect(verdict().textContent).toContain('Incomplete')
   await record()
   expect(await line('FiO2').findByText('FiO2 is a fraction here: 0.50?')).toBeTruthy()
-  expect(document.activeElement).toBe(line('FiO2').getByRole('textbox'))
+  await waitFor(() => expect(document.activeElement).toBe(line('FiO2').getByRole('textbox')))
   expect(valueOf(line('Norepinephrine').getByRole('textbox'))).toBe('0.04')
   expect(sent).toEqual([])
 })
