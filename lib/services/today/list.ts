@@ -1,7 +1,7 @@
 import 'server-only'
 import { listDayEntries } from '@/db/queries/day-entries'
 import { listFreeBeds, listLatestSettings, listVentilatedOfUnit } from '@/db/queries/today'
-import { authorize } from '@/lib/access/door'
+import { authorize, type UnitRow } from '@/lib/access/door'
 import type { TodayDto, TodayRowDto } from '@/lib/schemas/today'
 import type { Ctx } from '@/lib/server/ctx'
 import { ageYears, HOUR_MS } from '@/lib/shared/time'
@@ -10,6 +10,7 @@ import { isAdult } from '@/lib/weaning/indices/is-adult'
 import { nextMove } from '@/lib/weaning/next-move'
 import { makeDayClock } from './day-clock'
 import { findUnitProtocol } from './find-unit-protocol'
+import { keepToday } from './kept-today'
 import { rememberedMoment } from './remembered-time'
 import { LONGEST_DAY_MS, sinceDay } from './since-day'
 import { groupDayEntries, toDayRecord } from './to-day-record'
@@ -21,6 +22,10 @@ export const WATCH_HOURS = 72
 /** The unit's day: every ventilated patient, and those in the watch after it, each with exactly one next move or the reason for none. */
 export function listToday(ctx: Ctx, input: { unitId: string }): TodayDto {
   const { unit } = authorize(ctx, 'today.read', { unitId: input.unitId })
+  return keepToday(ctx, unit.id, () => workOutToday(ctx, unit))
+}
+
+function workOutToday(ctx: Ctx, unit: UnitRow): TodayDto {
   const { inForce, find } = findUnitProtocol(ctx.db, unit.id, ctx.now)
   const clock = makeDayClock(ctx.now, unit.timeZone, inForce.content.screeningWindow)
   const found = latestOfEachPatient(listVentilatedOfUnit(ctx.db, unit.id, ctx.now - WATCH_HOURS * HOUR_MS))

@@ -14,6 +14,7 @@ import {
   trialObservations,
   trials,
 } from '@/db/schema'
+import { KEPT_FOR_MS } from '@/lib/services/today/kept-today'
 import { listToday } from '@/lib/services/today/list'
 import { readDayRecord, readNextMove } from '@/lib/services/today/read-next-move'
 import { HOUR_MS, MINUTE_MS } from '@/lib/shared/time'
@@ -435,7 +436,7 @@ describe('listToday', () => {
     })
     expect(today(world).counts).toMatchObject({ ventilated: 0, overdue: 0 })
     expect(today(world, endedAt + 72 * HOUR_MS).rows).toHaveLength(1)
-    expect(today(world, endedAt + 72 * HOUR_MS + 1).rows).toEqual([])
+    expect(today(world, endedAt + 72 * HOUR_MS + KEPT_FOR_MS).rows).toEqual([])
     world.db.update(stays).set({ endedAt: NOW, end: 'left_unit' }).run()
     expect(today(world).rows).toEqual([])
   })
