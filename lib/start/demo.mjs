@@ -2,7 +2,7 @@
 import { existsSync, readFileSync, rmSync, writeFileSync } from 'node:fs'
 import { join } from 'node:path'
 import { build } from './build.mjs'
-import { main, readPort, Refusal, ROOT, runProgram, say, serve, waitUntilHealthy } from './process.mjs'
+import { main, readPort, Refusal, refuseTakenPort, ROOT, runProgram, say, serve, waitUntilHealthy } from './process.mjs'
 import { readOrMakeSecret } from './secret.mjs'
 import { setup } from './setup.mjs'
 import { serverArguments } from './start.mjs'
@@ -68,6 +68,7 @@ async function demo(args) {
   const unknown = args.filter((argument) => argument !== '--fresh')
   if (unknown.length > 0) throw new Refusal(`Unknown: ${unknown.join(' ')}. The demo knows --fresh only.`)
   const port = readPort(process.env.PORT, 3000)
+  await refuseTakenPort('127.0.0.1', port)
   await setup()
   await build()
   if (args.includes('--fresh')) rmSync(FOLDER, { recursive: true, force: true })

@@ -1,5 +1,6 @@
 // Small helpers of the start scripts. Like all of them it uses Node's own modules only: nothing may be installed yet.
 import { spawn } from 'node:child_process'
+import { createServer } from 'node:net'
 import { fileURLToPath } from 'node:url'
 
 export const ROOT = fileURLToPath(new URL('../..', import.meta.url))
@@ -78,6 +79,17 @@ export async function waitUntilHealthy(address, seconds = 60) {
     await new Promise((resolve) => setTimeout(resolve, 150))
   }
   return false
+}
+
+/** Refuses a port that something else listens on: its answer would be taken for our server's. */
+export function refuseTakenPort(host, port) {
+  return new Promise((resolve, reject) => {
+    const probe = createServer()
+    probe.once('error', () =>
+      reject(new Refusal(`Something already listens on ${host}:${port}. Stop it, or choose another port (PORT=3001).`)),
+    )
+    probe.listen(port, host, () => probe.close(() => resolve()))
+  })
 }
 
 /** A port from a setting, or the usual one. */
