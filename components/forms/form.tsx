@@ -11,10 +11,13 @@ type FormProps = {
   children: ReactNode
 }
 
-/** A form whose Enter key moves on to the next field; in the last one it sends. The browser's own checks are off, ours speak. */
+/**
+ * A form whose Enter key moves on to the next field; in the last one it sends. The browser's own checks are off, ours speak.
+ * Method post: sent before the page is live, what was typed must not end in an address.
+ */
 export function Form({ submit, label, className, children }: FormProps) {
   return (
-    <form noValidate aria-label={label} className={className} onSubmit={submit.onSubmit} onKeyDown={moveOnEnter}>
+    <form method="post" noValidate aria-label={label} className={className} onSubmit={submit.onSubmit} onKeyDown={moveOnEnter}>
       {children}
     </form>
   )

@@ -52,7 +52,7 @@ export function UnlockForm({ name, takesFocus = false, onUnlocked }: UnlockFormP
   }
 
   return (
-    <form noValidate aria-label="Unlock" className="flex flex-col items-start gap-4" onSubmit={onSubmit}>
+    <form method="post" noValidate aria-label="Unlock" className="flex flex-col items-start gap-4" onSubmit={onSubmit}>
       <div className="flex flex-col gap-1.5">
         <label htmlFor={id} className="font-semibold">
           Password of {name}

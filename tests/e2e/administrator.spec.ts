@@ -4,7 +4,7 @@ import { choose, expectMarked, expectRefused, field, fill, form } from './suppor
 import { expectAccessible } from './support/look'
 import { linkOf, waitForMail } from './support/mailbox'
 import { baseUrlOf, morningZone, testFolder } from './support/places'
-import { expect, NOT_FOUND_404, REFUSED_403, REFUSED_422, test } from './support/test'
+import { expect, NOT_FOUND_404, REFUSED_403, REFUSED_422, test, UNAUTHENTICATED_401 } from './support/test'
 
 const baseURL = baseUrlOf('empty')
 const PASSWORD = 'harbour lights at dawn'
@@ -139,7 +139,7 @@ test('an administrator sets up hospital, units, beds, people and roles, and sees
   const unitId = /units\/([^/]+)\//.exec(nurse.url())?.[1] ?? ''
 
   await test.step('the nurse admits a patient, whom the administrator does not see', async () => {
-    complaints.expect(NOT_FOUND_404, REFUSED_403)
+    complaints.expect(NOT_FOUND_404, REFUSED_403, UNAUTHENTICATED_401)
     await nurse.getByRole('link', { name: 'Admit a patient' }).click()
     const admission = form(nurse, 'Admit a patient')
     await admission.getByRole('combobox', { name: 'Bed' }).selectOption({ label: 'H01' })

@@ -1,5 +1,5 @@
 import type { Request } from '@playwright/test'
-import { clockAgo, expectMarked, expectRefused, field, form, observedAgo } from './support/forms'
+import { clockAgo, expectMarked, expectRefused, field, form, observedAgo, untilLive } from './support/forms'
 import { expectAccessible } from './support/look'
 import { CLINICAL_FORMS, OTHER_FORMS, type FormCase } from './support/form-cases'
 import { expect, NOT_FOUND_404, REFUSED_403, REFUSED_409, REFUSED_422, test } from './support/test'
@@ -101,6 +101,7 @@ test('a time in the future, before ventilation began, or unreadable is refused a
   const before = count()
   const page = await openAs('rt')
   await page.goto(`/episodes/${episodeId}/settings`)
+  await untilLive(page)
   const target = form(page, 'Ventilator settings')
   await target.getByRole('combobox', { name: 'Mode' }).selectOption('PC-CSV')
   await field(target, 'FiO2').fill('0.40')

@@ -43,3 +43,10 @@ export async function expectMarked(control: Locator, words: string | RegExp): Pr
 /** The next move of a bed on Today, for those who may take it. */
 export const moveLink = (page: Page, title: string, bed: string) =>
   page.getByRole('link', { name: new RegExp(`^${title} ?, bed ${bed}$`) })
+
+/** Waits until the page's script has taken its form over; what is chosen before that is asked for again. */
+export async function untilLive(page: Page): Promise<void> {
+  await page.waitForFunction(() =>
+    Object.keys(document.querySelector('main form') ?? {}).some((key) => key.startsWith('__react')),
+  )
+}
