@@ -5,6 +5,8 @@ import { newId } from '@/lib/shared/ids'
 // Times the Today verb, and the same rows read raw through better-sqlite3, in this one process. Prints JSON.
 const db = openDatabase(process.argv[2] ?? '')
 const unitId = String(db.$client.prepare('select id from units limit 1').pluck().get())
+// A second later each time, so that every call works the day out anew rather than giving the kept answer again.
+let calls = 0
 const ctx = () => ({
   actor: { kind: 'job' as const, name: 'bench' },
   now: Date.now(),

@@ -39,7 +39,7 @@ try {
   const largeRates = await compareThroughput(large, { session: '/api/bench/session', today: todayOf(large) }, { rounds: 3 })
   line('Today, 1,000 patients', `${number(largeRates.today)} /s, ${number(largeRates.today / largeRates.session, 3)} of (b)`)
 
-  console.log('\nServer time, in one process')
+  console.log('\nServer time, in one process, worked out anew at each call')
   const [few, many] = [await inProcess(small.database, small.env), await inProcess(large.database, large.env)]
   for (const one of [few, many]) {
     line(
