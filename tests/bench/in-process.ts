@@ -9,7 +9,7 @@ const unitId = String(db.$client.prepare('select id from units limit 1').pluck()
 let calls = 0
 const ctx = () => ({
   actor: { kind: 'job' as const, name: 'bench' },
-  now: Date.now(),
+  now: Date.now() + (calls += 1) * 1000,
   requestId: newId(),
   db,
   idempotencyKey: null,
