@@ -33,8 +33,8 @@ export async function medianLatencyMs({ address, cookie }, path, count = 40) {
   return median(times)
 }
 
-/** Resident memory, in MB, at steps of 1,000 requests after a warm-up. */
-export async function memoryOver({ address, cookie, pid }, path, { warmUp = 3000, requests = 10_000 } = {}) {
+/** Resident memory, in MB, at steps of 1,000 requests after a warm-up in which the heap takes its size. */
+export async function memoryOver({ address, cookie, pid }, path, { warmUp = 8000, requests = 10_000 } = {}) {
   await ask(address + path, cookie, { amount: warmUp })
   const steps = [residentMb(pid)]
   for (let done = 0; done < requests; done += 1000) {
