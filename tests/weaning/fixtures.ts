@@ -27,7 +27,7 @@ export const nothingScreened: ScreenReadings = {
   rsbiCondition: null,
 }
 
-/** The first worked screen of the reference (R-Q1): P/F 215, f/VT 62. */
+/** A worked screen (derived): P/F 215, f/VT 62. */
 export const goodScreen: ScreenReadings = {
   fio2Fraction: 0.4,
   peepCmH2O: 5,

@@ -4,6 +4,7 @@ import type { EntryDto } from '@/lib/schemas/observed'
 import { groupBy } from '@/lib/shared/group-by'
 import type { Action } from '@/lib/access/policy'
 import { toEntryDto } from '../entries/to-entry-dto'
+import { toSettingsValues } from '../settings/to-values'
 
 export type Naming = {
   personName: (personId: string) => string
@@ -74,20 +75,7 @@ function collect<Kind extends RecordedKind, Row extends VersionRow, Values>(
 
 function toMeasured(all: AllVersions, naming: Naming): RecordedDto[] {
   return [
-    ...collect(naming, 'settings', all.settings, (row) => ({
-      mode: row.mode,
-      fio2Fraction: row.fio2Fraction,
-      peepCmH2O: row.peepCmH2O,
-      setRatePerMin: row.setRatePerMin,
-      setTidalVolumeMl: row.setTidalVolumeMl,
-      inspiratoryPressureCmH2O: row.inspiratoryPressureCmH2O,
-      pressureSupportCmH2O: row.pressureSupportCmH2O,
-      measuredRatePerMin: row.measuredRatePerMin,
-      measuredTidalVolumeMl: row.measuredTidalVolumeMl,
-      peakPressureCmH2O: row.peakPressureCmH2O,
-      plateauPressureCmH2O: row.plateauPressureCmH2O,
-      spo2Percent: row.spo2Percent,
-    })),
+    ...collect(naming, 'settings', all.settings, toSettingsValues),
     ...collect(naming, 'gas', all.gas, (row) => ({
       ph: row.ph,
       paCO2MmHg: row.paCO2MmHg,

@@ -8,6 +8,7 @@ import type { StepFormQuery } from '@/lib/schemas/step-form'
 import type { Ctx } from '@/lib/server/ctx'
 import { findAmending, nameVersion, readBedsideForm } from '../steps/read-bedside-form'
 import { mayHere } from '../steps/read-step-form'
+import { toSettingsValues } from './to-values'
 
 /** What the form for ventilator settings shows. */
 export function readSettingsForm(ctx: Ctx, query: StepFormQuery): SettingsFormDto {
@@ -23,19 +24,5 @@ export function readSettingsForm(ctx: Ctx, query: StepFormQuery): SettingsFormDt
 }
 
 function toSettingsDto(ctx: Ctx, row: typeof settings.$inferSelect): SettingsDto {
-  return {
-    ...nameVersion(ctx, row),
-    mode: row.mode,
-    fio2Fraction: row.fio2Fraction,
-    peepCmH2O: row.peepCmH2O,
-    setRatePerMin: row.setRatePerMin,
-    setTidalVolumeMl: row.setTidalVolumeMl,
-    inspiratoryPressureCmH2O: row.inspiratoryPressureCmH2O,
-    pressureSupportCmH2O: row.pressureSupportCmH2O,
-    measuredRatePerMin: row.measuredRatePerMin,
-    measuredTidalVolumeMl: row.measuredTidalVolumeMl,
-    peakPressureCmH2O: row.peakPressureCmH2O,
-    plateauPressureCmH2O: row.plateauPressureCmH2O,
-    spo2Percent: row.spo2Percent,
-  }
+  return { ...nameVersion(ctx, row), ...toSettingsValues(row) }
 }

@@ -19,7 +19,7 @@ type Input = { unitId: string; days: ReviewDay[]; nowMs: number; stays: ReviewSt
 /**
  * Patient days and ventilator days of a unit, by month. An interval counts on each day it touches, its start included and its end not:
  * extubated at 00:00 does not count for the day that begins. A day in two units belongs to the one where the patient was last.
- * Variant: any part of the day; see the census case C1 of the surveillance reference, section 2 (derived).
+ * Variant: each day that any part of the interval touches; surveillance counts once a day at a fixed hour (derived).
  * @example countUnitDays({ unitId, days, nowMs, stays, episodes }).patientDays.get('2026-11') // 31
  */
 export function countUnitDays({ unitId, days, nowMs, stays, episodes }: Input) {

@@ -28,7 +28,7 @@ const SO_FAR = 'Today and the unfinished month are counted so far.'
 
 /**
  * One place for numerator, denominator and exclusions of every measure; the page and the files both read it.
- * Once-a-day counting as the standard: national surveillance protocol, from memory, see the surveillance reference section 2.
+ * Once-a-day counting as the standard: national surveillance protocol, from memory.
  */
 export const MEASURE_DEFINITIONS: Record<ReviewMeasure, MeasureDefinition> = {
   ventilator_days: {

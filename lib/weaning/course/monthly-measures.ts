@@ -39,7 +39,7 @@ export type MonthMeasures = {
 
 /**
  * Counts a unit's months: ventilator days, patient days, screens, trials, extubations and reintubations.
- * Variant: a day counts for any part of it; the surveillance standard counts once a day (surveillance reference, section 2).
+ * Variant: a day counts for any part of it; the surveillance standard counts once a day.
  * @example monthlyMeasures({ unitId, days, nowMs, stays, episodes, screens, trials, airwayEvents })[0]?.ventilatorDays // 42
  */
 export function monthlyMeasures(history: ReviewHistory): MonthMeasures[] {

@@ -45,7 +45,7 @@ function count(stays: ReviewStay[], episodes: ReviewEpisode[], days = plainDays(
   }
 }
 
-describe('census case C1, any part of the day (surveillance reference, section 2, derived)', () => {
+describe('a worked census, any part of the day (derived)', () => {
   const stays = [
     stay('A', BEFORE, at(4, '15:00')),
     stay('B', at(1, '09:30'), null),
